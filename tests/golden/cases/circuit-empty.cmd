@@ -1,0 +1,2 @@
+# No time, no gates.
+compile trio.pauli --time 0

@@ -1,0 +1,2 @@
+# A block of two qubits is one exact circuit, global phase included.
+compile pair.pauli --time 2

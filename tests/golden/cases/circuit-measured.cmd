@@ -1,0 +1,2 @@
+# A runnable program: reset, preparation, evolution, basis change, measurement.
+compile run.xml

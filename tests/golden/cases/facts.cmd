@@ -1,0 +1,2 @@
+# What inspect says of a small Hamiltonian.
+inspect trio.pauli

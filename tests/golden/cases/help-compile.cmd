@@ -1,0 +1,2 @@
+# The screen of options of compile.
+compile --help

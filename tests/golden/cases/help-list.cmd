@@ -1,0 +1,2 @@
+# The screen of options of list.
+list --help

@@ -1,0 +1,2 @@
+# The first screen that a user sees.
+--help

@@ -1,0 +1,2 @@
+# The table of formulas as people see it.
+list formulas

@@ -1,0 +1,2 @@
+# The table of natives as people see it.
+list natives

@@ -1,0 +1,2 @@
+# The table of passes as people see it.
+list passes

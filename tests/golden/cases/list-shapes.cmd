@@ -1,0 +1,2 @@
+# The table of shapes as people see it.
+list shapes

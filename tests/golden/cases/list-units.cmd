@@ -1,0 +1,2 @@
+# The table of units as people see it.
+list units

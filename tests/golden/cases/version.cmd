@@ -1,0 +1,2 @@
+# The version, as scripts read it.
+--version

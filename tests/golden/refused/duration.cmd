@@ -1,0 +1,2 @@
+# An objective that needs a device says so.
+compile bell.pauli --time 1 --minimise duration

@@ -1,0 +1,2 @@
+# A folder is no input.
+compile . --time 1

@@ -1,0 +1,2 @@
+# Facts need no time.
+inspect bell.pauli --time 1

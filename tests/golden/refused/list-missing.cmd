@@ -1,0 +1,2 @@
+# The verb list alone.
+list

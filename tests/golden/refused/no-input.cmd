@@ -1,0 +1,2 @@
+# A file that does not exist.
+compile no-such.pauli --time 1

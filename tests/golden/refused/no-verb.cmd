@@ -1,0 +1,2 @@
+# Nothing at all on the command line.
+

@@ -1,0 +1,2 @@
+# A formula that is not in this version says so.
+compile bell.pauli --time 1 --formula tuned

@@ -1,0 +1,2 @@
+# A misspelt verb gets the nearest one.
+compil bell.pauli --time 1

@@ -1,0 +1,2 @@
+# An option at the end without its value.
+compile bell.pauli --time

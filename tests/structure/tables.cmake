@@ -1,0 +1,46 @@
+# Tables and files agree: every row of the pass table has a file and a test of its name; every file
+# of passes/ without a header of its own is a pass and has a row; every test has what it tests.
+#   cmake -D root=REPOSITORY -P tables.cmake
+cmake_minimum_required(VERSION 3.25)
+
+set(wrong "")
+file(READ ${root}/passes/table.cpp text)
+string(REGEX MATCHALL "{\"[a-z_]+\"," matches "${text}")
+set(rows "")
+foreach(match IN LISTS matches)
+  string(REGEX REPLACE "[^a-z_]" "" name "${match}")
+  list(APPEND rows ${name})
+endforeach()
+list(LENGTH rows row_count)
+if(row_count EQUAL 0)
+  message(FATAL_ERROR "no row found in passes/table.cpp; has its form changed?")
+endif()
+
+foreach(name IN LISTS rows)
+  foreach(file IN ITEMS passes/${name}.cpp tests/passes/${name}.cpp)
+    if(NOT EXISTS ${root}/${file})
+      list(APPEND wrong "the pass ${name} has no ${file}")
+    endif()
+  endforeach()
+endforeach()
+
+file(GLOB files RELATIVE ${root}/passes ${root}/passes/*.cpp)
+foreach(file IN LISTS files)
+  string(REPLACE ".cpp" "" name ${file})
+  if(NOT EXISTS ${root}/passes/${name}.hpp AND NOT name IN_LIST rows)
+    list(APPEND wrong "passes/${file} has no row in passes/table.cpp")
+  endif()
+endforeach()
+
+file(GLOB tests RELATIVE ${root}/tests/passes ${root}/tests/passes/*.cpp)
+foreach(file IN LISTS tests)
+  if(NOT EXISTS ${root}/passes/${file})
+    list(APPEND wrong "tests/passes/${file} tests no file of passes/")
+  endif()
+endforeach()
+
+if(wrong)
+  list(JOIN wrong "\n  " text)
+  message(FATAL_ERROR "tables and files differ:\n  ${text}")
+endif()
+message(STATUS "${row_count} passes, each with its file and its test")
