@@ -16,7 +16,8 @@ struct Formula {
   int order = 1;
   bool symmetric = true;      ///< time-symmetric: the ramps read the same backwards
   std::vector<double> ramps;  ///< 1 for Lie-Trotter, else 2 * stages of them
-  std::string_view source;    ///< paper and equation
+  std::string_view source;    ///< paper and equation, or how it was found
+  bool by_default = true;     ///< considered where no formula is named
 
   [[nodiscard]] std::size_t stages() const { return symmetric ? ramps.size() / 2 : 1; }
 };
