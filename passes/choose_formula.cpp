@@ -16,135 +16,28 @@
 #include <cstdint>
 #include <farrier/diagnostic.hpp>
 #include <farrier/formula.hpp>
-#include <iterator>
-#include <limits>
-#include <map>
 #include <optional>
-#include <set>
 #include <string>
 #include <tuple>
 #include <utility>
 #include <vector>
 
 #include "compiler/base/numbers.hpp"
-#include "compiler/base/parallel.hpp"
 #include "compiler/bounds/models.hpp"
-#include "compiler/formulas/expand.hpp"
-#include "compiler/synthesis/cost.hpp"
+#include "passes/options.hpp"
 #include "passes/run.hpp"
 #include "passes/table.hpp"
 
 namespace farrier::passes {
 namespace {
 
-/// Products of Pauli strings that one error model may cost. A local Hamiltonian takes as many a
-/// qubit whatever its size.
-std::uint64_t work_limit(Effort effort, std::uint32_t qubits) {
-  const std::uint64_t normal = 4'000'000 + std::uint64_t{80'000} * qubits;
-  switch (effort) {
-    case Effort::low:
-      return normal / 8;
-    case Effort::normal:
-      return normal;
-    case Effort::high:
-      return normal * 20;
-  }
-  return 0;
-}
-
 /// Circuits that an estimate puts this far above the best one are not built.
 constexpr double hopeless = 2.0;
-
-/// A bound is sharpened by the next level where the cost that it asks for is at most this many
-/// times the least so far: the sharpest bounds save a factor of several over level 0, little
-/// beyond.
-constexpr std::array<double, bounds::deepest_level> worth_sharpening = {5.0, 2.5, 1.3};
-/// and where more than this share of the error is the remainder, which the next level lowers.
-constexpr double remainder_share = 0.03;
-
-/// A formula over a layering, with its error models and a first estimate of its cost.
-struct Option {
-  const Layering* layering = nullptr;
-  const Formula* formula = nullptr;  ///< none: exact
-  std::vector<bounds::ErrorModel> models;
-  std::vector<Exponential> step;
-  std::uint64_t step_cost = 0;  ///< estimated two-qubit gates a step, seams merged
-  bool sharpest = false;        ///< the last level brought nothing
-};
 
 struct Built {
   Part part;
   Candidate candidate;
 };
-
-bool allowed(const Formula& formula, const Restriction& restriction) {
-  const auto names = [&](const std::string& name) { return name == formula.name; };
-  if (!restriction.formulas.empty() && std::ranges::none_of(restriction.formulas, names))
-    return false;
-  return restriction.orders.empty() ||
-         std::ranges::find(restriction.orders, formula.order) != restriction.orders.end();
-}
-
-bool exact_allowed(const Restriction& restriction) {
-  return !restriction.any() ||
-         std::ranges::find(restriction.formulas, "exact") != restriction.formulas.end();
-}
-
-std::uint64_t estimate_step(const Hamiltonian& hamiltonian, const Layering& layering,
-                            const std::vector<Exponential>& step) {
-  std::vector<std::uint64_t> costs;
-  for (const Layer& layer : layering.layers)
-    costs.push_back(synthesis::layer_cost(hamiltonian, layer));
-  std::uint64_t total = 0;
-  for (const Exponential& exponential : step) total += costs[exponential.layer];
-  if (step.size() > 1 && step.front().layer == step.back().layer)
-    total -= costs[step.front().layer];
-  return total;
-}
-
-std::vector<Option> options(const Hamiltonian& hamiltonian, const Request& request,
-                            const std::vector<Layering>& layerings) {
-  std::vector<Option> result;
-  for (const Layering& layering : layerings) {
-    const std::size_t layers = layering.layers.size();
-    if (layers <= 1 && exact_allowed(request.restriction)) {
-      std::vector<Exponential> step;
-      if (layers == 1) step.push_back({0, 1.0});
-      result.push_back({&layering, nullptr, {{"exact", {}, 0}}, std::move(step), 0, true});
-      continue;
-    }
-    if (layers == 0) continue;
-    for (const Formula& formula : formula_table()) {
-      if (!allowed(formula, request.restriction)) continue;
-      std::vector<Exponential> step = formulas::expand(formula, layers);
-      const std::uint64_t cost = estimate_step(hamiltonian, layering, step);
-      result.push_back({&layering, &formula, {}, std::move(step), cost, false});
-    }
-  }
-  return result;
-}
-
-bounds::Question question(const Hamiltonian& hamiltonian, const Request& request,
-                          const Layering& layering, const Formula& formula) {
-  return {hamiltonian,
-          layering,
-          formula,
-          request.budget.assurance,
-          request.budget.up_to_phase,
-          work_limit(request.search.effort, hamiltonian.qubits)};
-}
-
-/// How many steps an option takes: given, or the least for the tolerance (0: out of reach), or the
-/// most within the limits.
-std::uint64_t wanted_steps(const Option& option, const Request& request, double reserve) {
-  if (option.formula == nullptr) return 1;
-  if (request.restriction.steps) return *request.restriction.steps;
-  if (request.budget.tolerance)
-    return bounds::least_steps(option.models, request.time, *request.budget.tolerance - reserve);
-  const std::uint64_t most =
-      request.budget.max_two_qubit_gates.value_or(request.budget.max_depth.value_or(1) * 1000);
-  return std::max<std::uint64_t>(1, most / std::max<std::uint64_t>(1, option.step_cost));
-}
 
 bool within_limits(const CircuitCounts& counts, const Budget& budget) {
   return counts.two_qubit_gates <= budget.max_two_qubit_gates.value_or(~std::uint64_t{0}) &&
@@ -200,127 +93,18 @@ void count_one_step(const Hamiltonian& hamiltonian, const Request& request, Plan
   candidate.step_two_qubit_depth = counts[1].two_qubit_depth - counts[0].two_qubit_depth;
 }
 
-/// Two-qubit gates that an option is expected to take.
-double estimate(const Option& option, const Request& request) {
-  const std::uint64_t steps = wanted_steps(option, request, 0.0);
-  if (steps == 0) return std::numeric_limits<double>::infinity();
-  return static_cast<double>(steps) * static_cast<double>(option.step_cost);
-}
-
-/// The share of the error that the remainder of the series makes.
-double share_of_remainder(const Option& option, const Request& request) {
-  const std::uint64_t steps = std::max<std::uint64_t>(1, wanted_steps(option, request, 0.0));
-  const auto contributions =
-      bounds::tightest(option.models, request.time, steps).contributions(request.time, steps);
-  double total = 0.0;
-  double remainder = 0.0;
-  for (const Contribution& contribution : contributions) {
-    total += contribution.value;
-    if (contribution.name == "remainder") remainder += contribution.value;
-  }
-  return total > 0.0 ? remainder / total : 0.0;
-}
-
-/// Options of one layering and formula, under different orders of the layers: only so many of them,
-/// the cheapest by the bounds so far, are worth a sharper bound. On many qubits only one of
-/// any layering.
-constexpr std::size_t sharpened_orders = 2;
-constexpr std::uint32_t many_qubits = 200;
-
-/// The options of one formula order whose bound is worth sharpening to a level, `least` being the
-/// cost of the best option so far.
-std::vector<Option*> worth_certifying(std::vector<Option>& all, int order, int level, double least,
-                                      const Request& request, bool large) {
-  std::vector<Option*> chosen;
-  for (Option& option : all) {
-    if (option.sharpest || option.formula->order != order) continue;
-    if (level > 0 &&
-        estimate(option, request) > worth_sharpening[static_cast<std::size_t>(level - 1)] * least)
-      continue;
-    if (level > 1 && share_of_remainder(option, request) <= remainder_share) continue;
-    chosen.push_back(&option);
-  }
-  if (level == 0) return chosen;
-  std::ranges::stable_sort(chosen, {},
-                           [&](const Option* option) { return estimate(*option, request); });
-  std::vector<Option*> kept;
-  for (Option* option : chosen) {
-    const auto alike = [&](const Option* other) {
-      return other->formula == option->formula &&
-             (large || other->layering->name == option->layering->name);
-    };
-    const std::size_t most = large ? 1 : sharpened_orders;
-    if (static_cast<std::size_t>(std::ranges::count_if(kept, alike)) < most) kept.push_back(option);
-  }
-  return kept;
-}
-
-/// What the midpoint frame cost so far, to tell what would run into the work limit for nothing.
-class WorkForecast {
- public:
-  /// Products of a model of that degree over a step of so many exponentials; 0 where unknown.
-  [[nodiscard]] double products(int degree, std::size_t exponentials) const {
-    if (const auto known = a_exponential_.find(degree); known != a_exponential_.end())
-      return known->second * static_cast<double>(exponentials);
-    const auto below = a_exponential_.find(degree - 2);
-    return below == a_exponential_.end()
-               ? 0.0
-               : growth * below->second * static_cast<double>(exponentials);
-  }
-
-  void learn(int degree, std::size_t exponentials, std::uint64_t products) {
-    double& known = a_exponential_[degree];
-    known = std::max(known, static_cast<double>(products) / static_cast<double>(exponentials));
-  }
-
- private:
-  static constexpr double growth = 5.0;  ///< of two degrees, at the least
-  std::map<int, double> a_exponential_;
-};
-
-/// Bounds every option at level 0, and those that may win at the levels above. Low orders go first:
-/// they are cheap to bound, and their cost tells which high ones cannot win.
-void certify(const Hamiltonian& hamiltonian, const Request& request, std::vector<Option>& all) {
-  std::set<int> orders;
-  for (const Option& option : all)
-    if (option.formula != nullptr) orders.insert(option.formula->order);
-  WorkForecast forecast;
-  for (const int order : orders) {
-    for (int level = 0; level <= bounds::deepest_level; ++level) {
-      double least = std::numeric_limits<double>::infinity();
-      for (const Option& option : all)
-        if (!option.models.empty()) least = std::min(least, estimate(option, request));
-      const std::vector<Option*> chosen =
-          worth_certifying(all, order, level, least, request, hamiltonian.qubits > many_qubits);
-      base::parallel_for(chosen.size(), [&](std::size_t k) {
-        Option& option = *chosen[k];
-        bounds::Question asked = question(hamiltonian, request, *option.layering, *option.formula);
-        if (forecast.products(order + 2 * level, option.step.size()) >
-            static_cast<double>(asked.work_limit))
-          asked.work_limit = 0;
-        auto models = bounds::error_models(asked, level);
-        option.sharpest = models.empty();
-        std::ranges::move(models, std::back_inserter(option.models));
-      });
-      for (const Option* option : chosen)
-        if (option->formula->symmetric && !option->sharpest)
-          forecast.learn(order + 2 * level, option->step.size(), option->models.back().work);
-    }
-  }
-}
-
-/// The most steps, up to an estimate, whose circuit keeps to the limits; 1 where none does.
+/// The most steps whose circuit stays within the limits, by bisection up to a first estimate; 1
+/// where none does.
 std::uint64_t most_within_limits(const Hamiltonian& hamiltonian, const Request& request, Plan plan,
-                                 std::uint64_t estimated) {
+                                 std::uint64_t most) {
   const auto fits = [&](std::uint64_t steps) {
     plan.parts.front().steps = steps;
     std::vector<PassEntry> unlogged;
     return within_limits(count(run_circuit_passes(hamiltonian, request, plan, unlogged)),
                          request.budget);
   };
-  if (estimated == 1 || fits(estimated)) return estimated;
   std::uint64_t low = 1;
-  std::uint64_t high = estimated;
+  std::uint64_t high = most + 2;
   while (high - low > 1) {
     const std::uint64_t middle = low + (high - low) / 2;
     (fits(middle) ? low : high) = middle;
@@ -352,7 +136,7 @@ std::optional<Built> build(const Hamiltonian& hamiltonian, const Request& reques
     Plan plan;
     plan.time = request.time;
     plan.parts = {part};
-    if (!request.budget.tolerance && !request.restriction.steps)
+    if (!request.budget.tolerance && !request.restriction.steps && option.formula != nullptr)
       steps = most_within_limits(hamiltonian, request, plan, steps);
     plan.parts.front().steps = part.steps = steps;
     std::vector<PassEntry> unlogged;

@@ -21,6 +21,7 @@ struct Question {
   const Formula& formula;
   Assurance assurance = Assurance::certified;
   bool up_to_phase = false;
+  double time = 0.0;             ///< weighs the accumulating part of the error against the rest
   std::uint64_t work_limit = 0;  ///< products of Pauli strings that one model may cost
 };
 
@@ -45,15 +46,28 @@ std::optional<ErrorModel> published_model(const Question& question);
 /// exponentials only conjugate it.
 std::optional<ErrorModel> midpoint_model(const Question& question, int degree);
 
+/// On at most dense_qubits qubits: the generator of the error as dense matrices to a degree, in the
+/// frame of exp(-i s^k K_k) for `dressings` fitted K_k, with exact norms. What of the error
+/// averages out over the evolution is counted once, as a boundary term, and not once a step. Works
+/// for every formula (derivation in sector_series.hpp). None for more qubits, too large sectors, or
+/// time 0.
+std::optional<ErrorModel> dense_model(const Question& question, int degree, int dressings);
+inline constexpr std::uint32_t dense_qubits = 10;
+/// Sum of the cubes of the sectors' sizes, above which dense matrices are too dear: one of 2^8
+/// states.
+inline constexpr double dense_cost = 1.7e7;
+/// Whether the dense model is there for a splitting.
+bool dense_fits(const Hamiltonian& hamiltonian, const Layering& layering);
+
 /// A bound from 1-norms alone: r [ (L_S tau)^(p+1) + (L_H tau)^(p+1) ] / (p+1)!, L_H the 1-norm of
 /// H and L_S the sum of |fraction| times the layer's 1-norm. Both S and U agree with each other up
 /// to order p, and the (p+1)-th derivatives are at most L^(p+1). Holds in every case.
 ErrorModel coarse_model(const Question& question);
 
-/// Levels of effort for a formula. Level 0: the bound from 1-norms, the published one where there
-/// is one, and the midpoint frame with nothing but its remainder; never empty. Level k > 0: the
-/// midpoint frame with k more explicit orders, several times dearer than the level below; empty
-/// where there is no such model or the work limit is too small.
+/// Levels of effort for a formula. Level 0: the bound from 1-norms and the published one where there is
+/// one; never empty. Where dense matrices fit, levels 1 and 2 are the dense series, shorter and longer;
+/// elsewhere level k is the midpoint frame with k explicit orders, each level several times dearer than
+/// the one below. Empty where there is no such model or the work limit is too small.
 std::vector<ErrorModel> error_models(const Question& question, int level);
 inline constexpr int deepest_level = 3;
 

@@ -39,15 +39,15 @@ TEST_CASE("the bound from 1-norms by hand") {
 }
 
 TEST_CASE("the bound from 1-norms is never below the true error") {
-  for (const System& system : {farrier::test::heisenberg_ring(), farrier::test::two_letters(),
-                               farrier::test::ising_chain()}) {
+  for (const System& system :
+       {farrier::test::heisenberg_ring(), farrier::test::two_letters()}) {
     const farrier::test::Evolution<long double> evolution(system.hamiltonian, system.layering);
     for (const Formula& formula : formula_table()) {
       const ErrorModel model = coarse_model(ask(system, formula.name));
       const auto step =
           farrier::formulas::expand(formula, system.layering.layers.size());
-      for (const double time : {-1.0, 0.1, 0.5, 2.0})
-        for (const std::uint64_t steps : {1U, 3U, 20U}) {
+      for (const double time : {-1.0, 0.1, 2.0})
+        for (const std::uint64_t steps : {1U, 20U}) {
           INFO(formula.name, " at time ", time, " in ", steps, " steps");
           CHECK(model.error(time, steps) >= evolution.error(step, time, steps));
         }
@@ -67,6 +67,17 @@ TEST_CASE("the rounding of a formula's coefficients is covered") {
       for (std::size_t k = 0; k < layers; ++k)
         CHECK(std::abs(static_cast<double>(sums[k] - 1)) <= 1e-15 * fractions[k]);
     }
+  // With short steps little else is left of the error: one step in long double, whose own rounding is
+  // far below.
+  const farrier::test::Evolution<long double> evolution(system.hamiltonian, system.layering);
+  for (const Formula& formula : formula_table()) {
+    const auto step = farrier::formulas::expand(formula, 3);
+    for (const double time : {1e-4, 1e-3, 1e-2, 3e-2, 0.1}) {
+      INFO(formula.name, " at time ", time);
+      CHECK(coarse_model(ask(system, formula.name)).error(time, 1) >=
+            evolution.error(step, time, 1) - 1e-18L * static_cast<long double>(step.size()));
+    }
+  }
   const ErrorModel model = coarse_model(ask(system, "suzuki-6"));
   CHECK(coefficient(model, "order conditions") > 0.0);
   CHECK(model.terms[1].time_power == 1);

@@ -5,6 +5,7 @@
 #include <cmath>
 #include <cstdint>
 #include <string>
+#include <string_view>
 #include <vector>
 
 #include "compiler/bounds/models.hpp"
@@ -14,20 +15,29 @@
 
 using farrier::Assurance;
 using farrier::Formula;
-using farrier::formula_table;
 using farrier::bounds::ErrorModel;
 using farrier::bounds::ErrorTerm;
 using farrier::bounds::midpoint_model;
 using farrier::bounds::Question;
 using farrier::test::ask;
 using farrier::test::coefficient;
-using farrier::test::generator;
+using farrier::test::error_generator;
+using farrier::test::error_generator_at;
 using farrier::test::Matrix;
 using farrier::test::normalised_frobenius_norm;
 using farrier::test::spectral_norm;
 using farrier::test::System;
 
 namespace {
+
+/// One formula of each order and make; all of them would take long.
+std::vector<const Formula*> symmetric_formulas() {
+  std::vector<const Formula*> result;
+  for (const char* name : {"strang", "omelyan-2", "suzuki-4", "blanes-moan-4", "secular-4-6",
+                           "suzuki-6", "blanes-moan-6", "kahan-li-8"})
+    result.push_back(farrier::find_formula(name));
+  return result;
+}
 
 ErrorModel midpoint(const Question& question, int degree) {
   const auto model = midpoint_model(question, degree);
@@ -36,7 +46,7 @@ ErrorModel midpoint(const Question& question, int degree) {
 }
 
 /// rho with ||E(s) - its powers below s^q|| <= rho s^q, whose integral is rho tau^(q+1) / (q+1).
-double rho(const System& system, const char* formula, int degree) {
+double rho(const System& system, std::string_view formula, int degree) {
   return coefficient(midpoint(ask(system, formula), degree), "remainder") * (degree + 1);
 }
 
@@ -116,9 +126,9 @@ TEST_CASE("leading norms lie between the exact norm and the 1-norm") {
   };
   for (const Case& item : cases) {
     const Formula& formula = *farrier::find_formula(item.formula);
-    const auto powers = generator(item.system, formula, formula.order + 1);
-    const double exact = static_cast<double>(spectral_norm<long double>(powers.back()) * 2 /
-                                             (formula.order + 1));
+    const auto powers = error_generator(item.system, formula, formula.order + 1);
+    const double exact =
+        static_cast<double>(spectral_norm<long double>(powers.back()) / (formula.order + 1));
     CHECK(exact == doctest::Approx(item.exact).epsilon(1e-10));
     CHECK(leading(item.system, item.formula) >= exact);
     CHECK(leading(item.system, item.formula) <= item.one_norm * (1.0 + 1e-10));
@@ -146,17 +156,17 @@ TEST_CASE("leading norms on average are roots of the sums of squares") {
 }
 
 TEST_CASE("every power of the generator is bounded from above") {
-  for (std::uint64_t seed = 1; seed <= 25; ++seed) {
+  for (std::uint64_t seed = 1; seed <= 10; ++seed) {
     const System system = random_system(seed);
-    for (const Formula& formula : formula_table()) {
-      if (!formula.symmetric) continue;
+    for (const Formula* row : symmetric_formulas()) {
+      const Formula& formula = *row;
       const int degree = formula.order + 4;
-      const auto powers = generator(system, formula, degree);
+      const auto powers = error_generator(system, formula, degree);
       const ErrorModel model = midpoint(ask(system, formula.name), degree);
       const ErrorModel average = midpoint(ask(system, formula.name, Assurance::average), degree);
       for (int j = 0; j < degree; j += 2) {
         const auto& power = powers[static_cast<std::size_t>(j)];
-        const long double weight = 2.0L / (j + 1);
+        const long double weight = 1.0L / (j + 1);
         INFO(formula.name, ", power ", j, ", seed ", seed);
         const ErrorTerm* term = norm_term(model, j + 1);
         const ErrorTerm* mean = norm_term(average, j + 1);
@@ -176,20 +186,19 @@ TEST_CASE("every power of the generator is bounded from above") {
 }
 
 TEST_CASE("the remainder bounds what the powers leave of the generator") {
-  for (std::uint64_t seed = 1; seed <= 12; ++seed) {
+  for (std::uint64_t seed = 1; seed <= 6; ++seed) {
     const System system = random_system(seed);
     const double scale = 1.0 / system.hamiltonian.sum.one_norm();
-    for (const Formula& formula : formula_table()) {
-      if (!formula.symmetric) continue;
+    for (const Formula* row : symmetric_formulas()) {
+      const Formula& formula = *row;
       for (int degree = 2; degree <= formula.order + 4; degree += 2) {
-        const auto powers = generator(system, formula, degree);
-        const double bound = rho(system, formula.name.data(), degree);
+        const auto powers = error_generator(system, formula, degree);
+        const double bound = rho(system, formula.name, degree);
         for (const double s : {0.1 * scale, scale, 4.0 * scale, 30.0 * scale}) {
-          Matrix<long double> rest =
-              generator_at(system, formula, s) + generator_at(system, formula, -s);
+          Matrix<long double> rest = error_generator_at(system, formula, s);
           for (int j = 0; j < degree; j += 2)
             rest -= powers[static_cast<std::size_t>(j)] *
-                    std::complex<long double>(2 * std::pow(static_cast<long double>(s), j));
+                    std::complex<long double>(std::pow(static_cast<long double>(s), j));
           INFO(formula.name, ", degree ", degree, ", seed ", seed);
           // The rounding of 100 exponentials of dimension 8 in long double.
           const long double rounding = 1e-16L * system.hamiltonian.sum.one_norm();
@@ -204,8 +213,8 @@ TEST_CASE("the remainder bounds what the powers leave of the generator") {
 TEST_CASE("powers below the order are rounding only") {
   for (std::uint64_t seed = 1; seed <= 10; ++seed) {
     const System system = random_system(seed);
-    for (const Formula& formula : formula_table()) {
-      if (!formula.symmetric) continue;
+    for (const Formula* row : symmetric_formulas()) {
+      const Formula& formula = *row;
       const ErrorModel model = midpoint(ask(system, formula.name), formula.order + 2);
       for (const ErrorTerm& term : model.terms) {
         if (term.name != "order conditions") continue;
@@ -243,12 +252,12 @@ TEST_CASE("up to a global phase half the spread of the spectrum counts") {
     for (const char* name : {"strang", "suzuki-4"}) {
       const Question question = ask(system, name, Assurance::certified, true);
       const int order = question.formula.order;
-      const auto operator_of_order = generator(system, question.formula, order + 1).back();
+      const auto operator_of_order = error_generator(system, question.formula, order + 1).back();
       const Eigen::SelfAdjointEigenSolver<Matrix<long double>> solver(operator_of_order);
       const long double spread =
           solver.eigenvalues().maxCoeff() - solver.eigenvalues().minCoeff();
       const ErrorModel model = midpoint(question, order + 2);
-      CHECK(coefficient(model, "leading") >= spread / (order + 1));
+      CHECK(coefficient(model, "leading") >= spread / 2 / (order + 1));
       CHECK(model.error(1.0, 10) <= midpoint(ask(system, name), order + 2).error(1.0, 10));
     }
 }

@@ -30,6 +30,25 @@ std::string names(const std::vector<ErrorModel>& models) {
   return text;
 }
 
+/// XX, YY and ZZ between neighbours of an open chain, a layer each.
+System heisenberg_chain(std::uint32_t sites) {
+  System system;
+  system.hamiltonian.qubits = sites;
+  system.layering.layers.resize(3);
+  for (const farrier::Pauli letter : {farrier::Pauli::x, farrier::Pauli::y, farrier::Pauli::z})
+    for (std::uint32_t site = 0; site + 1 < sites; ++site)
+      system.hamiltonian.sum.add(
+          std::vector<farrier::Factor>{{site, letter}, {site + 1, letter}}, 1.0);
+  system.hamiltonian.sum.merge();
+  for (std::uint32_t term = 0; term < system.hamiltonian.sum.size(); ++term) {
+    const auto factors = system.hamiltonian.sum.factors(term);
+    const auto layer = static_cast<std::size_t>(factors[0].letter()) - 1;
+    system.layering.layers[layer].blocks.push_back(
+        {farrier::BlockKind::pair, factors[0].qubit(), factors[1].qubit(), {term}});
+  }
+  return system;
+}
+
 double true_error(const System& system, const char* formula, double time, std::uint64_t steps) {
   const Evolution<double> evolution(system.hamiltonian, system.layering);
   return evolution.error(
@@ -39,21 +58,35 @@ double true_error(const System& system, const char* formula, double time, std::u
 
 }  // namespace
 
-TEST_CASE("levels of effort") {
+TEST_CASE("levels of effort for few qubits") {
   const System system = farrier::test::heisenberg_ring();
-  CHECK(names(error_models(ask(system, "lie"), 0)) == "1-norm, published commutator bound");
-  CHECK(names(error_models(ask(system, "strang"), 0)) ==
-        "1-norm, published commutator bound, midpoint frame");
+  REQUIRE(farrier::bounds::dense_fits(system.hamiltonian, system.layering));
+  const std::string both = "1-norm, published commutator bound";
+  CHECK(names(error_models(ask(system, "lie"), 0)) == both);
+  CHECK(names(error_models(ask(system, "strang"), 0)) == both);
+  CHECK(names(error_models(ask(system, "suzuki-4"), 0)) == "1-norm");
+  for (const char* formula : {"lie", "strang", "suzuki-4", "blanes-moan-6"}) {
+    CHECK(names(error_models(ask(system, formula), 1)) == "secular certificate");
+    CHECK(names(error_models(ask(system, formula), 2)) == "secular certificate");
+    CHECK(error_models(ask(system, formula), 3).empty());
+  }
+}
+
+TEST_CASE("levels of effort for more qubits than dense matrices take") {
+  const System system = heisenberg_chain(12);
+  REQUIRE_FALSE(farrier::bounds::dense_fits(system.hamiltonian, system.layering));
+  const std::string both = "1-norm, published commutator bound";
+  CHECK(names(error_models(ask(system, "lie"), 0)) == both);
+  CHECK(names(error_models(ask(system, "strang"), 0)) == both + ", midpoint frame");
   CHECK(names(error_models(ask(system, "suzuki-4"), 0)) == "1-norm, midpoint frame");
   for (int level = 1; level <= deepest_level; ++level) {
-    CHECK(names(error_models(ask(system, "lie"), level)).empty());
+    CHECK(error_models(ask(system, "lie"), level).empty());
     CHECK(names(error_models(ask(system, "strang"), level)) == "midpoint frame");
-    CHECK(names(error_models(ask(system, "suzuki-6"), level)) == "midpoint frame");
   }
 }
 
 TEST_CASE("level 0 is never empty") {
-  const System system = farrier::test::heisenberg_ring();
+  const System system = heisenberg_chain(12);
   for (const Formula& formula : formula_table()) {
     Question question = ask(system, formula.name);
     question.work_limit = 0;
@@ -79,9 +112,11 @@ TEST_CASE("layers that commute have no error but the coarse one") {
     CHECK(farrier::bounds::tightest(models, 100.0, 1).name == "published commutator bound");
     CHECK(farrier::bounds::tightest(models, 100.0, 1).error(100.0, 1) == 0.0);
   }
-  const auto models = error_models(ask(system, "suzuki-4"), 1);
-  REQUIRE(models.size() == 1);
-  CHECK(models.front().error(100.0, 1) < 1e-12);
+  for (const char* formula : {"lie", "suzuki-4", "secular-4-6"}) {
+    const auto models = error_models(ask(system, formula), 1);
+    REQUIRE(models.size() == 1);
+    CHECK(models.front().error(1.0, 1) < 1e-11);
+  }
 }
 
 TEST_CASE("true errors of the Heisenberg ring are never above a bound") {
@@ -102,7 +137,8 @@ TEST_CASE("true errors of the Heisenberg ring are never above a bound") {
     CHECK(true_error(system, item.formula, 3.0, item.least_steps) <= 1e-3);
     CHECK(true_error(system, item.formula, 3.0, item.least_steps - 1) > 1e-3);
     for (int level = 0; level <= deepest_level; ++level)
-      for (const ErrorModel& model : error_models(ask(system, item.formula), level)) {
+      for (const ErrorModel& model :
+           error_models(ask(system, item.formula, Assurance::certified, false, 3.0), level)) {
         INFO(model.name, " at level ", level);
         CHECK(model.error(3.0, item.steps) >= item.error);
         CHECK(model.least_steps(3.0, 1e-3, farrier::bounds::most_steps) >= item.least_steps);
@@ -110,26 +146,13 @@ TEST_CASE("true errors of the Heisenberg ring are never above a bound") {
   }
 }
 
-TEST_CASE("the sharpest bounds come close to the truth") {
-  // The norm of the leading operator is 3.6 to 4.6 times the true error of these systems (a prototype
-  // in NumPy, with exact norms); anticommuting sets add at most as much again.
-  const System ring = farrier::test::heisenberg_ring();
-  const auto ratio = [&](const char* formula, std::uint64_t steps) {
-    return error_models(ask(ring, formula), deepest_level).front().error(3.0, steps) /
-           true_error(ring, formula, 3.0, steps);
-  };
-  CHECK(ratio("strang", 300) < 2.5);
-  CHECK(ratio("suzuki-4", 30) < 4.0);
-}
-
 TEST_CASE("each level is sharper for small steps") {
-  const System system = farrier::test::heisenberg_ring();
-  for (const Formula& formula : formula_table()) {
-    if (!formula.symmetric) continue;
-    double last = error_models(ask(system, formula.name), 0).back().error(1.0, 200);
-    for (int level = 1; level <= deepest_level; ++level) {
-      const double error = error_models(ask(system, formula.name), level).front().error(1.0, 200);
-      INFO(formula.name, " at level ", level);
+  const System system = heisenberg_chain(11);
+  for (const char* formula : {"strang", "suzuki-4"}) {
+    double last = error_models(ask(system, formula), 0).back().error(1.0, 200);
+    for (int level = 1; level <= 2; ++level) {
+      const double error = error_models(ask(system, formula), level).front().error(1.0, 200);
+      INFO(std::string(formula), " at level ", level);
       CHECK(error < last);
       last = error;
     }
@@ -145,6 +168,6 @@ TEST_CASE("on average errors are bounded lower than for every state") {
           error_models(ask(system, formula.name, Assurance::average), level);
       REQUIRE(certified.size() == average.size());
       for (std::size_t k = 0; k < certified.size(); ++k)
-        CHECK(average[k].error(1.0, 50) <= certified[k].error(1.0, 50));
+        CHECK(average[k].error(1.0, 50) <= certified[k].error(1.0, 50) * (1.0 + 1e-9));
     }
 }

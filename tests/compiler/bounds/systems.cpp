@@ -53,10 +53,11 @@ System disordered_ring() {
 }
 
 bounds::Question ask(const System& system, std::string_view formula, Assurance assurance,
-                     bool up_to_phase) {
+                     bool up_to_phase, double time) {
   const Formula* found = find_formula(formula);
   REQUIRE(found != nullptr);
-  return {system.hamiltonian, system.layering, *found, assurance, up_to_phase, 1'000'000'000};
+  return {system.hamiltonian, system.layering, *found, assurance, up_to_phase, time,
+          1'000'000'000};
 }
 
 double coefficient(const bounds::ErrorModel& model, std::string_view name) {
@@ -66,47 +67,74 @@ double coefficient(const bounds::ErrorModel& model, std::string_view name) {
   return found->coefficient;
 }
 
-std::vector<Matrix<long double>> generator(const System& system, const Formula& formula,
-                                           int degree) {
+namespace {
+
+using Dense = Matrix<long double>;
+using Complex = std::complex<long double>;
+
+/// The exponentials that turn the generator in a frame, as operators and fractions.
+struct Turn {
+  Dense layer;
+  long double fraction = 0;
+};
+
+/// For symmetric formulas the half that acts first, on -H/2; for others the whole and then exp(iHs),
+/// on nothing.
+std::vector<Turn> turns(const System& system, const Formula& formula) {
   const Hamiltonian& hamiltonian = system.hamiltonian;
-  std::vector<Matrix<long double>> layers;
-  for (const Layer& layer : system.layering.layers)
-    layers.push_back(dense<long double>(hamiltonian, layer));
-  std::vector<Matrix<long double>> powers(
-      static_cast<std::size_t>(degree),
-      Matrix<long double>::Zero(layers.front().rows(), layers.front().cols()));
-  for (const auto& layer : layers) powers[0] -= layer / 2;
-  for (const Exponential& exponential : formulas::expand_first_half(formula, layers.size())) {
-    const Matrix<long double>& layer = layers[exponential.layer];
-    const long double a = exponential.fraction;
-    std::vector<Matrix<long double>> next = powers;
+  const std::size_t layers = system.layering.layers.size();
+  std::vector<Turn> result;
+  for (const Exponential& exponential : formula.symmetric
+                                            ? formulas::expand_first_half(formula, layers)
+                                            : formulas::expand(formula, layers))
+    result.push_back(
+        {dense<long double>(hamiltonian, system.layering.layers[exponential.layer]),
+         static_cast<long double>(exponential.fraction)});
+  if (!formula.symmetric)
+    result.push_back({dense<long double>(hamiltonian.sum, hamiltonian.qubits), -1});
+  return result;
+}
+
+Dense start(const System& system, const Formula& formula) {
+  const Dense h = dense<long double>(system.hamiltonian.sum, system.hamiltonian.qubits);
+  return h * Complex(formula.symmetric ? -0.5L : 0.0L);
+}
+
+}  // namespace
+
+std::vector<Dense> error_generator(const System& system, const Formula& formula, int degree) {
+  const Dense first = start(system, formula);
+  std::vector<Dense> powers(static_cast<std::size_t>(degree),
+                            Dense::Zero(first.rows(), first.cols()));
+  powers[0] = first;
+  for (const Turn& turn : turns(system, formula)) {
+    std::vector<Dense> next = powers;
     for (std::size_t j = 0; j < powers.size(); ++j) {
-      Matrix<long double> derivative = powers[j];
+      Dense derivative = powers[j];
       for (std::size_t m = 1; j + m < powers.size(); ++m) {
-        derivative = commutator<long double>(layer, derivative) *
-                     std::complex<long double>(a / static_cast<long double>(m));
+        derivative = commutator<long double>(turn.layer, derivative) *
+                     Complex(turn.fraction / static_cast<long double>(m));
         next[j + m] += derivative;
       }
     }
-    next[0] += layer * std::complex<long double>(a);
+    next[0] += turn.layer * Complex(turn.fraction);
     powers = next;
   }
+  if (formula.symmetric)
+    for (std::size_t j = 0; j < powers.size(); ++j) powers[j] *= Complex(j % 2 == 0 ? 2 : 0);
   return powers;
 }
 
-Matrix<long double> generator_at(const System& system, const Formula& formula, long double s) {
-  Matrix<long double> value =
-      dense<long double>(system.hamiltonian.sum, system.hamiltonian.qubits) *
-      std::complex<long double>(-0.5L);
-  for (const Exponential& exponential :
-       formulas::expand_first_half(formula, system.layering.layers.size())) {
-    const auto layer =
-        dense<long double>(system.hamiltonian, system.layering.layers[exponential.layer]);
-    const long double a = exponential.fraction;
-    const Matrix<long double> turn = Spectrum<long double>(layer).exponential(a * s);
-    value = turn * value * turn.adjoint() + layer * std::complex<long double>(a);
-  }
-  return value;
+Dense error_generator_at(const System& system, const Formula& formula, long double s) {
+  const auto at = [&](long double place) {
+    Dense value = start(system, formula);
+    for (const Turn& turn : turns(system, formula)) {
+      const Dense unitary = Spectrum<long double>(turn.layer).exponential(turn.fraction * place);
+      value = unitary * value * unitary.adjoint() + turn.layer * Complex(turn.fraction);
+    }
+    return value;
+  };
+  return formula.symmetric ? Dense(at(s) + at(-s)) : at(s);
 }
 
 }  // namespace farrier::test

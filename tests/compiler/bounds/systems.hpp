@@ -34,15 +34,18 @@ System ising_chain();
 System disordered_ring();
 
 bounds::Question ask(const System& system, std::string_view formula,
-                     Assurance assurance = Assurance::certified, bool up_to_phase = false);
+                     Assurance assurance = Assurance::certified, bool up_to_phase = false,
+                     double time = 1.0);
 
 /// The coefficient of the term of that name; fails the test where there is none.
 double coefficient(const bounds::ErrorModel& model, std::string_view name);
 
-/// T_0 to T_(degree-1) of models.hpp, as matrices.
-std::vector<Matrix<long double>> generator(const System& system, const Formula& formula,
-                                           int degree);
-/// T(s) itself, with no series.
-Matrix<long double> generator_at(const System& system, const Formula& formula, long double s);
+/// The powers of s below `degree` of the error's generator with nothing fitted, E(s) of
+/// sector_series.hpp: in the midpoint frame for symmetric formulas, in the frame of U^dag else.
+std::vector<Matrix<long double>> error_generator(const System& system, const Formula& formula,
+                                                 int degree);
+/// E(s) itself, with no series.
+Matrix<long double> error_generator_at(const System& system, const Formula& formula,
+                                       long double s);
 
 }  // namespace farrier::test
