@@ -99,13 +99,22 @@ class Window {
       remove(index);
       return;
     }
-    bool zero = true;
     for (std::size_t k = 0; k < 3; ++k) {
       earlier.parameters[k] += gate.parameters[k];
       rounding_ += 2.3e-16 * std::abs(earlier.parameters[k]);
-      zero = zero && earlier.parameters[k] == 0.0;
     }
-    if (zero) remove(index);
+    if (earlier.kind != GateKind::canonical) reduce_angle(earlier.parameters[0]);
+    if (std::all_of(earlier.parameters.begin(), earlier.parameters.begin() + 3,
+                    [](double value) { return value == 0.0; }))
+      remove(index);
+  }
+
+  /// Brings the angle of an rzz or rxx that was added up into (-pi, pi]; a whole turn is a sign.
+  void reduce_angle(double& angle) {
+    if (angle > -pi && angle <= pi) return;
+    angle += angle > 0.0 ? -2 * pi : 2 * pi;
+    phase_ += pi;
+    rounding_ += 4e-16;
   }
 
   std::vector<Gate> gates_;

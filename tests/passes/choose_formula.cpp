@@ -146,7 +146,7 @@ TEST_CASE("restrictions are honoured") {
     CHECK((candidate.order == 1 || candidate.order == 4));
 }
 
-TEST_CASE("given steps are taken, and the error is reported") {
+TEST_CASE("given steps are taken and the error is reported") {
   const Hamiltonian h = test::heisenberg(4, test::Ends::open, 0.3);
   Request asked = request(0.5, std::nullopt);
   asked.restriction.formulas = {"lie"};
@@ -264,6 +264,15 @@ TEST_CASE("a limit that is used up leaves no room for a step more") {
   const Plan plan = planned(h, asked);
   const Candidate& chosen = plan.candidates.front();
   CHECK(chosen.counts.two_qubit_gates + chosen.step_two_qubit_gates > 101);
+}
+
+TEST_CASE("an exact step is one step under limits too") {
+  Request asked = request(1.0, std::nullopt);
+  asked.budget.max_two_qubit_gates = 100;
+  const Plan plan = planned(test::ising_chain(5, 1.0, 0.0), asked);
+  check_plan(plan, asked);
+  CHECK(plan.parts.front().formula == "exact");
+  CHECK(plan.parts.front().steps == 1);
 }
 
 TEST_CASE("a tolerance and a limit that exclude each other are refused") {

@@ -82,7 +82,7 @@ TEST_CASE("the counts of a pass start where those of the last one end") {
   CHECK(log.back().counts->after.gates() == count(circuit).gates());
 }
 
-TEST_CASE("the finished circuit is the plan's product within its rounding") {
+TEST_CASE("the finished circuit is the product of the plan within its rounding") {
   test::Random random(1);
   const Hamiltonian h = test::random_two_local(3, random);
   std::vector<PassEntry> log;

@@ -75,7 +75,7 @@ void check_product(const Hamiltonian& h, const Plan& plan) {
 
 }  // namespace
 
-TEST_CASE("the circuit is the product of the plan's exponentials") {
+TEST_CASE("the circuit is the product of exponentials of the plan") {
   Random random(1);
   for (const std::string_view formula : {"lie", "strang", "suzuki-4"}) {
     for (const std::uint64_t steps : {1, 2, 3}) {

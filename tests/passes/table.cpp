@@ -17,7 +17,7 @@ TEST_CASE("names differ and every row has a line of description") {
   }
 }
 
-TEST_CASE("passes on the Hamiltonian come first, then on the plan, then on the circuit") {
+TEST_CASE("passes on the Hamiltonian come first - then on the plan - then on the circuit") {
   std::size_t last = 0;
   int builders = 0;
   for (const Pass& pass : pass_table()) {

@@ -337,7 +337,7 @@ TEST_CASE("nearly degenerate special unitaries are decomposed") {
   }
 }
 
-TEST_CASE("pair_matrix multiplies turns, canonical gates and cx") {
+TEST_CASE("pair_matrix multiplies turns and canonical gates and cx") {
   Random draw(12);
   for (int k = 0; k < 50; ++k) {
     std::vector<Gate> gates;

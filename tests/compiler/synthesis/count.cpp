@@ -211,7 +211,7 @@ TEST_CASE("a canonical gate counts as the cx that it needs") {
   CHECK(count(canonical(pi / 2, 0, 0)).two_qubit_gates == 0);
 }
 
-TEST_CASE("multiples of pi over 2 and pi over 4 to a part in 10^12 are no rotations") {
+TEST_CASE("multiples of pi over 2 and pi over 4 to a part in 1e12 are no rotations") {
   const auto rz = [](double angle) {
     return count(circuit_of(1, {{{one(GateKind::rz, 0, angle)}, 1}}));
   };

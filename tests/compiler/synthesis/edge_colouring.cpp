@@ -204,7 +204,7 @@ TEST_CASE("every graph takes at most one colour more than the largest degree") {
   }
 }
 
-TEST_CASE("nearly complete graphs and triangular lattices keep to Vizing's bound") {
+TEST_CASE("nearly complete graphs and triangular lattices keep to the bound of Vizing") {
   Random draw(6);
   for (std::uint32_t n = 4; n <= 14; ++n) {
     for (int k = 0; k < 10; ++k) {

@@ -58,7 +58,7 @@ std::vector<Gate> gates_of(const std::string& definition, double theta) {
 
 }  // namespace
 
-TEST_CASE("the table lists the kinds with a name, in the order of the enumeration") {
+TEST_CASE("the table lists the kinds with a name - in the order of the enumeration") {
   std::size_t index = static_cast<std::size_t>(GateKind::h);
   std::set<std::string> names;
   for (const GateInfo& info : gate_table()) {
@@ -75,7 +75,7 @@ TEST_CASE("gates that have not been lowered have no row") {
   CHECK_THROWS_AS(gate_info(GateKind::canonical), InternalFault);
 }
 
-TEST_CASE("what stdgates.inc lacks is defined, and nothing else") {
+TEST_CASE("what the standard library lacks is defined and nothing else") {
   // OpenQASM 3 specification, "Standard library" and "Built-in gates".
   const std::set<std::string> given = {"h", "s", "sdg", "sx", "x", "y", "z",
                                        "rx", "ry", "rz", "U", "cx", "cz"};
@@ -83,7 +83,7 @@ TEST_CASE("what stdgates.inc lacks is defined, and nothing else") {
     CHECK(info.definition.empty() == given.contains(std::string(info.name)));
 }
 
-TEST_CASE("each definition is the gate that it names, global phase included") {
+TEST_CASE("each definition is the gate that it names - global phase included") {
   for (const GateInfo& info : gate_table()) {
     if (info.definition.empty()) continue;
     for (const double theta : {0.0, 0.3, -1.2, 3.0}) {

@@ -66,7 +66,7 @@ TEST_CASE("a string of weight w takes 2 w - 2 cx in either ladder") {
             2 * (weight - 1));
 }
 
-TEST_CASE("a line is 2 w - 2 deep, a tree twice the logarithm of w rounded up") {
+TEST_CASE("a line is 2 w - 2 deep - a tree twice the logarithm of w rounded up") {
   // Elementary: a balanced tree halves the number of open parities in each layer.
   Random draw(3);
   for (std::uint32_t weight = 1; weight <= 33; ++weight) {

@@ -102,7 +102,7 @@ TEST_CASE("compose multiplies operators - the second argument acts first") {
   }
 }
 
-TEST_CASE("inverse gives the adjoint, without rounding") {
+TEST_CASE("inverse gives the adjoint - without rounding") {
   Random draw(3);
   for (int k = 0; k < 100; ++k) {
     const Turn a = random_turn(draw);
@@ -162,7 +162,7 @@ TEST_CASE("distance_from_identity is the spectral distance") {
   }
 }
 
-TEST_CASE("gates without angle are named, whatever the sign of the turn") {
+TEST_CASE("gates without angle are named - whatever the sign of the turn") {
   for (const auto& [name, turn] : turns_with_names()) {
     INFO(name);
     for (const Turn& either : {turn, Turn{-turn.w, -turn.x, -turn.y, -turn.z}}) {
