@@ -68,6 +68,7 @@ Certificate certificate(const Option& option, const Request& request, std::uint6
   }
   result.contributions.push_back({"rounding", rounding, "counted operations", true});
   result.contributions = joined(std::move(result.contributions));
+  std::ranges::stable_sort(result.contributions, std::ranges::greater{}, &Contribution::value);
   for (const Contribution& contribution : result.contributions)
     if (contribution.counts) result.bound += contribution.value;
   // The unitaries are at most 2 apart, and the sum was rounded.
@@ -120,7 +121,7 @@ std::optional<Built> build(const Hamiltonian& hamiltonian, const Request& reques
   for (int attempt = 0; attempt < 4; ++attempt) {
     std::uint64_t steps = wanted_steps(option, request, reserve);
     if (steps == 0) {
-      refusal = "cannot reach the tolerance";
+      refusal = "reaches the tolerance";
       return std::nullopt;
     }
     Built built;
@@ -160,7 +161,7 @@ std::optional<Built> build(const Hamiltonian& hamiltonian, const Request& reques
     if (request.time != 0.0) count_one_step(hamiltonian, request, plan, candidate);
     return built;
   }
-  refusal = "cannot reach the tolerance for the rounding of angles";
+  refusal = "reaches the tolerance, for the rounding of angles alone";
   return std::nullopt;
 }
 

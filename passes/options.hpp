@@ -19,7 +19,7 @@ struct Option {
   std::vector<bounds::ErrorModel> models;
   std::vector<Exponential> step;
   std::uint64_t step_cost = 0;  ///< estimated two-qubit gates a step, seams merged
-  int level = -1;         ///< of the sharpest bound asked for
+  int level = -1;               ///< of the sharpest bound asked for
   bool sharpest = false;        ///< the last level brought nothing
 };
 

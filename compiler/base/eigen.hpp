@@ -7,6 +7,8 @@
 namespace farrier::base {
 
 /// Call once at the start of a program's numerical work; idempotent.
-inline void fix_eigen_blocking() { Eigen::setCpuCacheSizes(32 * 1024, 256 * 1024, 2 * 1024 * 1024); }
+inline void fix_eigen_blocking() {
+  Eigen::setCpuCacheSizes(32 * 1024, 256 * 1024, 2 * 1024 * 1024);
+}
 
 }  // namespace farrier::base

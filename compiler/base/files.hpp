@@ -2,10 +2,9 @@
 // part.
 #pragma once
 
+#include <farrier/diagnostic.hpp>
 #include <string>
 #include <string_view>
-
-#include <farrier/diagnostic.hpp>
 
 namespace farrier::base {
 
@@ -18,7 +17,8 @@ std::string read_file(const std::string& path);
 /// UserError: cannot_create, or io_failed; no temporary is left behind.
 void write_file(const std::string& path, std::string_view content);
 
-/// Removes the temporary that is being written, if there is one; safe to call from a signal handler.
+/// Removes the temporary that is being written, if there is one; safe to call from a signal
+/// handler.
 void discard_temporary() noexcept;
 
 }  // namespace farrier::base

@@ -2,10 +2,9 @@
 #pragma once
 
 #include <cstddef>
+#include <farrier/diagnostic.hpp>
 #include <string>
 #include <string_view>
-
-#include <farrier/diagnostic.hpp>
 
 namespace farrier::base {
 

@@ -64,10 +64,11 @@ bool dense_fits(const Hamiltonian& hamiltonian, const Layering& layering);
 /// to order p, and the (p+1)-th derivatives are at most L^(p+1). Holds in every case.
 ErrorModel coarse_model(const Question& question);
 
-/// Levels of effort for a formula. Level 0: the bound from 1-norms and the published one where there is
-/// one; never empty. Where dense matrices fit, levels 1 and 2 are the dense series, shorter and longer;
-/// elsewhere level k is the midpoint frame with k explicit orders, each level several times dearer than
-/// the one below. Empty where there is no such model or the work limit is too small.
+/// Levels of effort for a formula. Level 0: the bound from 1-norms and the published one where
+/// there is one; never empty. Where dense matrices fit, levels 1 and 2 are the dense series,
+/// shorter and longer; elsewhere level k is the midpoint frame with k explicit orders, each level
+/// several times dearer than the one below. Empty where there is no such model or the work limit is
+/// too small.
 std::vector<ErrorModel> error_models(const Question& question, int level);
 inline constexpr int deepest_level = 3;
 

@@ -1,15 +1,14 @@
-// The main job: a Hamiltonian, a time and a tolerance go in, a circuit comes out whose distance from
-// the exact evolution is at most what its certificate says. The exact evolution and the circuit's
-// operator are computed in tests/support/unitary.cpp, apart from everything that farrier computes.
-#include <farrier/compile.hpp>
-
+// The main job: a Hamiltonian, a time and a tolerance go in, a circuit comes out whose distance
+// from the exact evolution is at most what its certificate says. The exact evolution and the
+// circuit's operator are computed in tests/support/unitary.cpp, apart from everything that farrier
+// computes.
 #include <doctest/doctest.h>
-
-#include <farrier/diagnostic.hpp>
 
 #include <algorithm>
 #include <array>
 #include <cmath>
+#include <farrier/compile.hpp>
+#include <farrier/diagnostic.hpp>
 #include <numbers>
 #include <optional>
 #include <string>
@@ -50,8 +49,9 @@ Job stepped(Hamiltonian h, double time, const std::string& formula, std::uint64_
 }
 
 Real error_of(const Hamiltonian& h, const Point& point) {
-  return unitary::distance(unitary::circuit_matrix(point.circuit),
-                           unitary::evolution(unitary::sum_matrix(h.qubits, h.sum), point.plan.time));
+  return unitary::distance(
+      unitary::circuit_matrix(point.circuit),
+      unitary::evolution(unitary::sum_matrix(h.qubits, h.sum), point.plan.time));
 }
 
 /// The exact evolution is itself wrong by this, for its eigenvalues are rounded.
@@ -78,16 +78,22 @@ std::vector<std::pair<std::string, Hamiltonian>> models() {
       {"all pairs of 4", test::random_two_local(4, random)},
       {"strings of weight up to 3", test::random_strings(5, 8, 3, random)},
       {"strings of weight up to 4", test::random_strings(5, 6, 4, random)},
-      {"one-body terms", test::hamiltonian(3, {{"X0", 0.7}, {"Z0", 0.4}, {"Y2", -1.1}, {"I", 0.3}})},
-      {"two parts", test::hamiltonian(6, {{"X0 X1", 1}, {"Y1 Y2", 0.7}, {"Z2", 0.3},
-                                          {"X4 Z5", 0.9}, {"Z4 X5", -0.6}})},
+      {"one-body terms",
+       test::hamiltonian(3, {{"X0", 0.7}, {"Z0", 0.4}, {"Y2", -1.1}, {"I", 0.3}})},
+      {"two parts",
+       test::hamiltonian(
+           6, {{"X0 X1", 1}, {"Y1 Y2", 0.7}, {"Z2", 0.3}, {"X4 Z5", 0.9}, {"Z4 X5", -0.6}})},
       {"hydrogen", test::hydrogen()},
   };
 }
 
-std::string text_of(const Job& job) { return compile(job).points.front().text; }
+std::string text_of(const Job& job) {
+  return compile(job).points.front().text;
+}
 
-std::string body_of(const std::string& text) { return text.substr(text.find("include ")); }
+std::string body_of(const std::string& text) {
+  return text.substr(text.find("include "));
+}
 
 }  // namespace
 
@@ -186,8 +192,8 @@ TEST_CASE("each time of a job is compiled on its own") {
 }
 
 TEST_CASE("one Lie-Trotter step on an even Heisenberg ring takes 3 n gates in depth 6") {
-  // A bond takes three gates (Vidal, Dawson 2004, PRA 69, 010301), and the bonds of an even ring two
-  // colours.
+  // A bond takes three gates (Vidal, Dawson 2004, PRA 69, 010301), and the bonds of an even ring
+  // two colours.
   for (const std::uint32_t n : {4U, 6U, 10U, 50U}) {
     const Result result = compile(stepped(test::heisenberg(n, Ends::joined), 0.1, "lie", 1));
     CHECK(result.points.front().counts.two_qubit_gates == 3 * n);
@@ -205,8 +211,8 @@ TEST_CASE("one Lie-Trotter step on an Ising chain takes 2 n - 2 gates in depth 4
 }
 
 TEST_CASE("one step of kicked Ising at the Clifford angle takes one gate a bond") {
-  // exp(-i pi/4 ZZ) is one cx up to turns (Vidal, Dawson 2004). With the coupling alone in a layer of
-  // its own, since folding a field into a block would make the angle generic.
+  // exp(-i pi/4 ZZ) is one cx up to turns (Vidal, Dawson 2004). With the coupling alone in a layer
+  // of its own, since folding a field into a block would make the angle generic.
   for (const std::uint32_t n : {4U, 9U}) {
     const Result result = compile(stepped(test::ising_chain(n, pi / 4, 0.3), 1.0, "lie", 1));
     CHECK(result.points.front().counts.two_qubit_gates == n - 1);
@@ -317,8 +323,8 @@ TEST_CASE("the first row of a survey is what compile writes") {
 
 TEST_CASE("inspect tells the facts of a Hamiltonian") {
   Job job;
-  job.hamiltonian = test::hamiltonian(7, {{"X0 X1", 1}, {"Y1 Y2", -2}, {"Z4", 0.5}, {"I", 3},
-                                          {"X5 Y6", 1}});
+  job.hamiltonian =
+      test::hamiltonian(7, {{"X0 X1", 1}, {"Y1 Y2", -2}, {"Z4", 0.5}, {"I", 3}, {"X5 Y6", 1}});
   const Facts facts = inspect(job);
   CHECK(facts.qubits == 7);
   CHECK(facts.terms == 4);

@@ -1,9 +1,8 @@
-// cancel_gates: the same operator with no more gates and no more depth. What it cancels is tested in
-// compiler/synthesis/peephole.cpp.
+// cancel_gates: the same operator with no more gates and no more depth. What it cancels is tested
+// in compiler/synthesis/peephole.cpp.
 #include <doctest/doctest.h>
 
 #include <farrier/formula.hpp>
-
 #include <string_view>
 
 #include "compiler/formulas/expand.hpp"
@@ -52,7 +51,8 @@ TEST_CASE("the operator stays and no count grows") {
 
 TEST_CASE("basis changes between strings of one kind cancel") {
   // X0 X1 X2 and X2 X3 X4 commute; both are taken to Z and back, but for qubit 2 only once.
-  Circuit circuit = synthesised(test::hamiltonian(5, {{"X0 X1 X2", 1}, {"X2 X3 X4", 0.5}}), "lie", 1);
+  Circuit circuit =
+      synthesised(test::hamiltonian(5, {{"X0 X1 X2", 1}, {"X2 X3 X4", 0.5}}), "lie", 1);
   const CircuitCounts before = count(circuit);
   Notes notes;
   passes::cancel_gates({}, circuit, notes);

@@ -1,9 +1,8 @@
 // choose_formula: the best of what is allowed, certified within the tolerance, or a refusal.
 #include <doctest/doctest.h>
 
-#include <farrier/diagnostic.hpp>
-
 #include <algorithm>
+#include <farrier/diagnostic.hpp>
 #include <optional>
 #include <string>
 #include <vector>

@@ -91,8 +91,8 @@ TEST_CASE("sums of few commuting sets are split into as many layers") {
   CHECK(grouped(test::heisenberg(6, test::Ends::joined, 0.3)).layers.size() <= 3);
   CHECK(grouped(test::ising_chain(9, 1.0, 0.7)).layers.size() == 2);
   CHECK(grouped(test::ising_chain(9, 1.0, 0.0)).layers.size() == 1);
-  // All 15 strings on two qubits fall into at least five commuting sets of three (Lawrence, Brukner,
-  // Zeilinger 2002, PRA 65, 032320).
+  // All 15 strings on two qubits fall into at least five commuting sets of three (Lawrence,
+  // Brukner, Zeilinger 2002, PRA 65, 032320).
   Random random(1);
   CHECK(grouped(test::random_two_local(2, random)).layers.size() >= 5);
 }

@@ -43,7 +43,8 @@ Gate random_gate(std::uint32_t qubits, Random& random) {
     return random.chance(0.5) ? pick(random, special) : random.between(-2, 2);
   };
   if (random.chance(0.3)) return {GateKind::cx, a, b, {}};
-  if (random.chance(0.4)) return {GateKind::canonical, a, b, {coordinate(), coordinate(), coordinate()}};
+  if (random.chance(0.4))
+    return {GateKind::canonical, a, b, {coordinate(), coordinate(), coordinate()}};
   return synthesis::turn_gate(
       a, synthesis::compose(synthesis::rotation(Pauli::x, 2 * coordinate()),
                             synthesis::rotation(Pauli::z, random.chance(0.5) ? 0.0 : 2.0)));
@@ -135,8 +136,8 @@ TEST_CASE("one-axis couplings are one gate where the device has their kind") {
 }
 
 TEST_CASE("a circuit that cancels is empty and keeps its phase") {
-  const Circuit circuit = lowered(
-      circuit_of(2, {{{synthesis::turn_gate(0, {-1, 0, 0, 0})}, 3}}), Native::cx);
+  const Circuit circuit =
+      lowered(circuit_of(2, {{{synthesis::turn_gate(0, {-1, 0, 0, 0})}, 3}}), Native::cx);
   CHECK(circuit.segments.empty());
   CHECK(std::abs(std::remainder(circuit.global_phase - (0.3 + pi), 2 * pi)) <= 1e-15);
 }

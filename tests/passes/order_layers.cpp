@@ -1,4 +1,5 @@
-// order_layers: every order holds the same layers; few layers get every order, many the useful ones.
+// order_layers: every order holds the same layers; few layers get every order, many the useful
+// ones.
 #include <doctest/doctest.h>
 
 #include <algorithm>

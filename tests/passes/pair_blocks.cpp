@@ -55,8 +55,7 @@ void check_blocks(const Hamiltonian& h) {
 }  // namespace
 
 TEST_CASE("the example of the pass") {
-  const Hamiltonian h =
-      test::hamiltonian(3, {{"X0 X1", 1}, {"Y0 Y1", 1}, {"Z1", 1}, {"X1 X2", 1}});
+  const Hamiltonian h = test::hamiltonian(3, {{"X0 X1", 1}, {"Y0 Y1", 1}, {"Z1", 1}, {"X1 X2", 1}});
   const Layering made = layering(h);
   CHECK(made.name == "pair blocks");
   CHECK(made.layers.size() == 2);

@@ -4,7 +4,6 @@
 #include <doctest/doctest.h>
 
 #include <farrier/diagnostic.hpp>
-
 #include <string>
 #include <vector>
 

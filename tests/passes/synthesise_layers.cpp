@@ -4,7 +4,6 @@
 
 #include <farrier/diagnostic.hpp>
 #include <farrier/formula.hpp>
-
 #include <string>
 #include <string_view>
 #include <vector>
@@ -56,8 +55,8 @@ Matrix product(const Hamiltonian& h, const Plan& plan) {
       terms.insert(terms.end(), block.terms.begin(), block.terms.end());
     step = unitary::evolution(unitary::terms_matrix(h, terms), tau * exponential.fraction) * step;
   }
-  Matrix all = Matrix::Identity(size, size) *
-               std::polar(1.0L, -Real{h.sum.constant()} * Real{plan.time});
+  Matrix all =
+      Matrix::Identity(size, size) * std::polar(1.0L, -Real{h.sum.constant()} * Real{plan.time});
   for (std::uint64_t k = 0; k < part.steps; ++k) all = step * all;
   return all;
 }

@@ -2,11 +2,10 @@
 // Hamiltonians through the whole of compile(), with random settings.
 #include <doctest/doctest.h>
 
+#include <array>
 #include <farrier/compile.hpp>
 #include <farrier/diagnostic.hpp>
 #include <farrier/formula.hpp>
-
-#include <array>
 #include <numbers>
 
 #include "tests/support/hamiltonians.hpp"
@@ -24,10 +23,14 @@ constexpr std::array<Native, 6> natives = {Native::cx,    Native::cz,  Native::e
 /// Coefficients of every kind: generic, equal, multiples of the Clifford angle, of any size.
 double coefficient(Random& random) {
   switch (test::below(random, 5)) {
-    case 0: return test::pick(random, std::array{1.0, -1.0, 0.5, 2.0});
-    case 1: return test::pick(random, std::array{pi / 4, -pi / 4, pi / 2, pi / 8, pi});
-    case 2: return random.between(-1e-6, 1e-6);
-    default: return random.between(-1, 1);
+    case 0:
+      return test::pick(random, std::array{1.0, -1.0, 0.5, 2.0});
+    case 1:
+      return test::pick(random, std::array{pi / 4, -pi / 4, pi / 2, pi / 8, pi});
+    case 2:
+      return random.between(-1e-6, 1e-6);
+    default:
+      return random.between(-1, 1);
   }
 }
 
@@ -59,8 +62,8 @@ Job random_job(Random& random) {
     job.budget.max_two_qubit_gates = 1 + test::below(random, 400);
   else
     job.budget.tolerance = test::pick(random, std::array{0.3, 1e-2, 1e-3, 1e-5});
-  job.budget.minimise = test::pick(random, std::array{Objective::gates, Objective::depth,
-                                                      Objective::rotations});
+  job.budget.minimise =
+      test::pick(random, std::array{Objective::gates, Objective::depth, Objective::rotations});
   job.budget.assurance = random.chance(0.2) ? Assurance::average : Assurance::certified;
   job.output.native = test::pick(random, natives);
   job.output.style = Style::looped;

@@ -12,10 +12,14 @@ constexpr std::array<Pauli, 3> letters = {Pauli::x, Pauli::y, Pauli::z};
 
 Pauli letter_of(char name) {
   switch (name) {
-    case 'X': return Pauli::x;
-    case 'Y': return Pauli::y;
-    case 'Z': return Pauli::z;
-    default: return Pauli::i;
+    case 'X':
+      return Pauli::x;
+    case 'Y':
+      return Pauli::y;
+    case 'Z':
+      return Pauli::z;
+    default:
+      return Pauli::i;
   }
 }
 

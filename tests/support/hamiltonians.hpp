@@ -1,9 +1,8 @@
 // Hamiltonians that several tests are about, fixed and random.
 #pragma once
 
-#include <farrier/hamiltonian.hpp>
-
 #include <cstdint>
+#include <farrier/hamiltonian.hpp>
 #include <string>
 #include <vector>
 

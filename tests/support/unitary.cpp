@@ -18,12 +18,22 @@ Matrix two(Complex a, Complex b, Complex c, Complex d) {
   return m;
 }
 
-Matrix x_matrix() { return two(0, 1, 1, 0); }
-Matrix y_matrix() { return two(0, -i_unit, i_unit, 0); }
-Matrix z_matrix() { return two(1, 0, 0, -1); }
-Matrix one() { return Matrix::Identity(2, 2); }
+Matrix x_matrix() {
+  return two(0, 1, 1, 0);
+}
+Matrix y_matrix() {
+  return two(0, -i_unit, i_unit, 0);
+}
+Matrix z_matrix() {
+  return two(1, 0, 0, -1);
+}
+Matrix one() {
+  return Matrix::Identity(2, 2);
+}
 
-Matrix diagonal(Complex a, Complex b) { return two(a, 0, 0, b); }
+Matrix diagonal(Complex a, Complex b) {
+  return two(a, 0, 0, b);
+}
 
 /// exp(-i angle/2 P) for an involution P.
 Matrix half_angle(const Matrix& p, Real angle) {
@@ -33,15 +43,21 @@ Matrix half_angle(const Matrix& p, Real angle) {
 
 Matrix letter_matrix(Pauli letter) {
   switch (letter) {
-    case Pauli::x: return x_matrix();
-    case Pauli::y: return y_matrix();
-    case Pauli::z: return z_matrix();
-    case Pauli::i: break;
+    case Pauli::x:
+      return x_matrix();
+    case Pauli::y:
+      return y_matrix();
+    case Pauli::z:
+      return z_matrix();
+    case Pauli::i:
+      break;
   }
   return one();
 }
 
-Matrix couple(Pauli letter) { return kron(letter_matrix(letter), letter_matrix(letter)); }
+Matrix couple(Pauli letter) {
+  return kron(letter_matrix(letter), letter_matrix(letter));
+}
 
 /// The built-in U of the OpenQASM 3 specification ("Built-in gates", since version 3.0):
 /// 1/2 [[1 + e^(i theta), -i e^(i lambda) (1 - e^(i theta))],
@@ -63,25 +79,42 @@ Matrix controlled(const Matrix& target) {
 Matrix named_matrix(const Gate& gate) {
   const auto& p = gate.parameters;
   switch (gate.kind) {
-    case GateKind::h: return half_root * two(1, 1, 1, -1);
-    case GateKind::s: return diagonal(1, i_unit);
-    case GateKind::sdg: return diagonal(1, -i_unit);
-    case GateKind::sx: return 0.5L * two({1, 1}, {1, -1}, {1, -1}, {1, 1});
-    case GateKind::x: return x_matrix();
-    case GateKind::y: return y_matrix();
-    case GateKind::z: return z_matrix();
-    case GateKind::rx: return half_angle(x_matrix(), p[0]);
-    case GateKind::ry: return half_angle(y_matrix(), p[0]);
-    case GateKind::rz: return half_angle(z_matrix(), p[0]);
-    case GateKind::u: return built_in_u(p[0], p[1], p[2]);
-    case GateKind::cx: return controlled(x_matrix());
-    case GateKind::cz: return controlled(z_matrix());
-    case GateKind::ecr: return half_root * (kron(x_matrix(), one()) - kron(y_matrix(), x_matrix()));
+    case GateKind::h:
+      return half_root * two(1, 1, 1, -1);
+    case GateKind::s:
+      return diagonal(1, i_unit);
+    case GateKind::sdg:
+      return diagonal(1, -i_unit);
+    case GateKind::sx:
+      return 0.5L * two({1, 1}, {1, -1}, {1, -1}, {1, 1});
+    case GateKind::x:
+      return x_matrix();
+    case GateKind::y:
+      return y_matrix();
+    case GateKind::z:
+      return z_matrix();
+    case GateKind::rx:
+      return half_angle(x_matrix(), p[0]);
+    case GateKind::ry:
+      return half_angle(y_matrix(), p[0]);
+    case GateKind::rz:
+      return half_angle(z_matrix(), p[0]);
+    case GateKind::u:
+      return built_in_u(p[0], p[1], p[2]);
+    case GateKind::cx:
+      return controlled(x_matrix());
+    case GateKind::cz:
+      return controlled(z_matrix());
+    case GateKind::ecr:
+      return half_root * (kron(x_matrix(), one()) - kron(y_matrix(), x_matrix()));
     case GateKind::iswap:
       return half_angle(couple(Pauli::x), -pi / 2) * half_angle(couple(Pauli::y), -pi / 2);
-    case GateKind::rzz: return half_angle(couple(Pauli::z), p[0]);
-    case GateKind::rxx: return half_angle(couple(Pauli::x), p[0]);
-    default: throw std::invalid_argument("a gate without a matrix");
+    case GateKind::rzz:
+      return half_angle(couple(Pauli::z), p[0]);
+    case GateKind::rxx:
+      return half_angle(couple(Pauli::x), p[0]);
+    default:
+      throw std::invalid_argument("a gate without a matrix");
   }
 }
 
@@ -218,7 +251,9 @@ Real spectral_norm(const Matrix& matrix) {
   return scale * std::sqrt(solver.eigenvalues().maxCoeff());
 }
 
-Real distance(const Matrix& a, const Matrix& b) { return spectral_norm(a - b); }
+Real distance(const Matrix& a, const Matrix& b) {
+  return spectral_norm(a - b);
+}
 
 Real average_distance(const Matrix& a, const Matrix& b) {
   return (a - b).norm() / std::sqrt(static_cast<Real>(a.rows()));

@@ -1,14 +1,14 @@
-// Circuits and Hamiltonians as matrices, in extended precision, so that roundings of double precision
-// can be measured. Shares nothing with synthesis: every gate's matrix is written down here.
+// Circuits and Hamiltonians as matrices, in extended precision, so that roundings of double
+// precision can be measured. Shares nothing with synthesis: every gate's matrix is written down
+// here.
 //
 // Qubit k of a circuit is bit k of a row or column index.
 #pragma once
 
-#include <farrier/circuit.hpp>
-#include <farrier/hamiltonian.hpp>
-
 #include <complex>
 #include <cstdint>
+#include <farrier/circuit.hpp>
+#include <farrier/hamiltonian.hpp>
 #include <span>
 #include <vector>
 

@@ -26,8 +26,12 @@ namespace {
 constexpr double pi = std::numbers::pi;
 const std::array<std::string, 3> names = {"X", "Y", "Z"};
 
-std::string on(std::size_t axis, int qubit) { return names[axis] + std::to_string(qubit); }
-std::string pair(std::size_t left, std::size_t right) { return on(left, 0) + " " + on(right, 1); }
+std::string on(std::size_t axis, int qubit) {
+  return names[axis] + std::to_string(qubit);
+}
+std::string pair(std::size_t left, std::size_t right) {
+  return on(left, 0) + " " + on(right, 1);
+}
 
 Matrix matrix(const Sequence& sequence) {
   return unitary::gates_matrix(2, sequence.gates, sequence.phase);
@@ -138,8 +142,8 @@ Matrix gate(GateKind kind, std::array<double, 4> parameters = {}) {
 /// Brings the determinant to 1, in each of the four ways.
 void check_all_roots(const Matrix& m) {
   const Matrix special = m / std::pow(m.determinant(), 0.25L);
-  for (const unitary::Complex root : {unitary::Complex(1), unitary::Complex(0, 1),
-                                      unitary::Complex(-1), unitary::Complex(0, -1)})
+  for (const unitary::Complex root :
+       {unitary::Complex(1), unitary::Complex(0, 1), unitary::Complex(-1), unitary::Complex(0, -1)})
     check_decomposition(root * special);
 }
 
@@ -149,9 +153,14 @@ Matrix random_clifford(Random& draw) {
   for (int k = 0; k < 20; ++k) {
     const std::uint32_t q = below(draw, 2);
     switch (below(draw, 3)) {
-      case 0: gates.push_back({GateKind::h, q, q, {}}); break;
-      case 1: gates.push_back({GateKind::s, q, q, {}}); break;
-      default: gates.push_back({GateKind::cx, q, 1 - q, {}});
+      case 0:
+        gates.push_back({GateKind::h, q, q, {}});
+        break;
+      case 1:
+        gates.push_back({GateKind::s, q, q, {}});
+        break;
+      default:
+        gates.push_back({GateKind::cx, q, 1 - q, {}});
     }
   }
   return unitary::gates_matrix(2, gates);
@@ -164,8 +173,8 @@ TEST_CASE("a block on one qubit is one turn") {
   for (int k = 0; k < 200; ++k) {
     const double scale = random_scale(draw);
     const Hamiltonian h = test::hamiltonian(2, {{"X0", k % 2 == 0 ? draw.between(-1, 1) : 0.0},
-                                                   {"Y0", draw.between(-1, 1)},
-                                                   {"Z0", draw.between(-1, 1)}});
+                                                {"Y0", draw.between(-1, 1)},
+                                                {"Z0", draw.between(-1, 1)}});
     const Sequence sequence = block_sequence(h, block_of(h, BlockKind::one_qubit), scale);
     CHECK(sequence.gates.size() == 1);
     const Matrix expected = unitary::evolution(unitary::sum_matrix(2, h.sum), scale);
@@ -230,7 +239,8 @@ TEST_CASE("Ising coupling with fields across it takes two cx") {
   for (std::size_t z = 0; z < 3; ++z) {
     for (int k = 0; k < 60; ++k) {
       const std::size_t x = (z + 1 + static_cast<std::size_t>(k % 2)) % 3;
-      std::vector<Term> terms = {{pair(z, z), draw.between(0.3, 1)}, {on(x, 0), draw.between(-1, 1)}};
+      std::vector<Term> terms = {{pair(z, z), draw.between(0.3, 1)},
+                                 {on(x, 0), draw.between(-1, 1)}};
       if (k % 3 != 0) terms.push_back({on(x, 1), draw.between(-1, 1)});
       CHECK(check_block(terms, draw.between(0.1, 0.5)) == 2);
     }
@@ -240,7 +250,8 @@ TEST_CASE("Ising coupling with fields across it takes two cx") {
 TEST_CASE("cx of the usual couplings") {
   // As many as there are coordinates that are not 0, but two for one; one at the Clifford angle.
   CHECK(check_block({{"X0 X1", 1}, {"Y0 Y1", 1}, {"Z0 Z1", 1}}, 0.1) == 3);
-  CHECK(check_block({{"X0 X1", 1}, {"Y0 Y1", 1}, {"Z0 Z1", 1}, {"Z0", 0.5}, {"Z1", 0.5}}, 0.1) == 3);
+  CHECK(check_block({{"X0 X1", 1}, {"Y0 Y1", 1}, {"Z0 Z1", 1}, {"Z0", 0.5}, {"Z1", 0.5}}, 0.1) ==
+        3);
   CHECK(check_block({{"X0 X1", 1}, {"Y0 Y1", 1}}, 0.1) == 2);
   CHECK(check_block({{"X0 X1", 1}, {"Z0 Z1", 0.4}}, 0.1) == 2);
   CHECK(check_block({{"X0 Y1", 1}}, 0.1) == 2);
@@ -262,7 +273,13 @@ TEST_CASE("degenerate blocks") {
       {{"X0 X1", 1}, {"X0", 1}, {"X1", 1}},
       {{"Z0 Z1", 1}, {"Z0", 1}, {"Z1", 1}},
       {{"X0 X1", 1}, {"Y0 Y1", 1}, {"Z0 Z1", 1}, {"X0", 1}, {"X1", 1}},
-      {{"X0 X1", 1}, {"Y0 Y1", 1}, {"Z0 Z1", 1}, {"X0", 0.5}, {"Y0", 0.5}, {"X1", 0.5}, {"Y1", 0.5}},
+      {{"X0 X1", 1},
+       {"Y0 Y1", 1},
+       {"Z0 Z1", 1},
+       {"X0", 0.5},
+       {"Y0", 0.5},
+       {"X1", 0.5},
+       {"Y1", 0.5}},
       {{"X0", 1}},
       {{"Y1", 1}},
       {{"X0", 1}, {"Z1", 0.4}},
@@ -317,9 +334,9 @@ TEST_CASE("products of one-qubit gates are decomposed without a canonical gate o
   Random draw(10);
   for (int k = 0; k < 200; ++k) {
     const Hamiltonian h = test::hamiltonian(2, {{"X0", draw.between(-3, 3)},
-                                                   {"Z0", draw.between(-3, 3)},
-                                                   {"Y1", draw.between(-3, 3)},
-                                                   {"Z1", draw.between(-3, 3)}});
+                                                {"Z0", draw.between(-3, 3)},
+                                                {"Y1", draw.between(-3, 3)},
+                                                {"Z1", draw.between(-3, 3)}});
     const Matrix m = unitary::evolution(unitary::sum_matrix(2, h.sum), 1.0L);
     check_all_roots(m);
     CHECK(entanglers(coordinates(decompose(1, 0, to_pair_matrix(m))), Native::cx) == 0);
@@ -346,13 +363,17 @@ TEST_CASE("pair_matrix multiplies turns and canonical gates and cx") {
       switch (below(draw, 3)) {
         case 0:
           gates.push_back(turn_gate(
-              q, rotation(pick(draw, std::array{Pauli::x, Pauli::y, Pauli::z}), draw.between(-3, 3))));
+              q,
+              rotation(pick(draw, std::array{Pauli::x, Pauli::y, Pauli::z}), draw.between(-3, 3))));
           break;
         case 1:
-          gates.push_back({GateKind::canonical, q, 1 - q,
+          gates.push_back({GateKind::canonical,
+                           q,
+                           1 - q,
                            {draw.between(-2, 2), draw.between(-2, 2), draw.between(-2, 2)}});
           break;
-        default: gates.push_back({GateKind::cx, q, 1 - q, {}});
+        default:
+          gates.push_back({GateKind::cx, q, 1 - q, {}});
       }
     }
     const PairMatrix made = pair_matrix(1, gates);

@@ -31,7 +31,9 @@ constexpr std::array<Native, 3> cx_like = {Native::cx, Native::cz, Native::ecr};
 /// A comparison of two matrices in extended precision may itself be wrong by this.
 constexpr Real reference_error = 1e-17L;
 
-GateKind kind_of(Native native) { return kinds[static_cast<std::size_t>(native)]; }
+GateKind kind_of(Native native) {
+  return kinds[static_cast<std::size_t>(native)];
+}
 
 Matrix canonical_matrix(const Coordinates& c, std::uint32_t first = 0, std::uint32_t second = 1) {
   const Gate gate{GateKind::canonical, first, second, {c[0], c[1], c[2]}};
@@ -86,9 +88,11 @@ std::vector<double> special_values() {
 
 /// What reduced coordinates and flips stand for.
 Matrix reduced_matrix(const Reduced& reduced) {
-  std::vector<Gate> gates = {{GateKind::canonical, 0, 1,
-                              {reduced.coordinates[0], reduced.coordinates[1],
-                               reduced.coordinates[2]}}};
+  std::vector<Gate> gates = {
+      {GateKind::canonical,
+       0,
+       1,
+       {reduced.coordinates[0], reduced.coordinates[1], reduced.coordinates[2]}}};
   constexpr std::array<Pauli, 3> letters = {Pauli::x, Pauli::y, Pauli::z};
   for (std::size_t k = 0; k < 3; ++k)
     if (reduced.flipped[k])
@@ -186,7 +190,7 @@ TEST_CASE("gates equivalent to cx take as many as they need: 3 - 2 - 1 - 0") {
     }
     CHECK(entanglers({0.2, 0, 0}, native) == 2);
     CHECK(entanglers({0, 0.2, 0.1}, native) == 2);
-    CHECK(entanglers({pi / 4, 0, pi / 4}, native) == 2);      // iswap
+    CHECK(entanglers({pi / 4, 0, pi / 4}, native) == 2);  // iswap
     CHECK(entanglers({pi / 4, pi / 8, 0}, native) == 2);
     CHECK(entanglers({0.3, 0.2, 0.1}, native) == 3);
     CHECK(entanglers({pi / 4, pi / 4, pi / 4}, native) == 3);  // swap
@@ -241,21 +245,23 @@ TEST_CASE("the identities that the decompositions rest on") {
   const auto zz = unitary::string_matrix(2, std::array{Factor(0, Pauli::z), Factor(1, Pauli::z)});
 
   // exp(-i pi/4 ZX) = e^(i pi/4) rz_a(pi/2) rx_b(pi/2) CX
-  CHECK(unitary::distance(unitary::evolution(zx, unitary::pi / 4),
-                          product({pair(GateKind::cx), turn(0, Pauli::z, pi / 2),
-                                   turn(1, Pauli::x, pi / 2)},
-                                  unitary::pi / 4)) <= 1e-15L);
+  CHECK(unitary::distance(
+            unitary::evolution(zx, unitary::pi / 4),
+            product({pair(GateKind::cx), turn(0, Pauli::z, pi / 2), turn(1, Pauli::x, pi / 2)},
+                    unitary::pi / 4)) <= 1e-15L);
   // exp(-i (a XX + c ZZ)) = CX (rx(2a) (x) rz(2c)) CX
   CHECK(unitary::distance(canonical_matrix({0.3, 0, 0.7}),
                           product({pair(GateKind::cx), turn(0, Pauli::x, 0.6),
                                    turn(1, Pauli::z, 1.4), pair(GateKind::cx)},
                                   0)) <= 1e-15L);
   // iswap = SWAP CZ (S (x) S), SWAP as three cx
-  CHECK(unitary::distance(
-            product({pair(GateKind::iswap)}, 0),
-            product({{GateKind::s, 0, 0, {}}, {GateKind::s, 1, 1, {}}, pair(GateKind::cz),
-                     pair(GateKind::cx), {GateKind::cx, 1, 0, {}}, pair(GateKind::cx)},
-                    0)) <= 1e-17L);
+  CHECK(unitary::distance(product({pair(GateKind::iswap)}, 0), product({{GateKind::s, 0, 0, {}},
+                                                                        {GateKind::s, 1, 1, {}},
+                                                                        pair(GateKind::cz),
+                                                                        pair(GateKind::cx),
+                                                                        {GateKind::cx, 1, 0, {}},
+                                                                        pair(GateKind::cx)},
+                                                                       0)) <= 1e-17L);
   // W rx_a(p) rx_b(q) W = exp(-i p/2 ZY) exp(-i q/2 YZ) Z_a Z_b
   const Matrix two_iswaps = product({pair(GateKind::iswap), turn(0, Pauli::x, 0.6),
                                      turn(1, Pauli::x, 1.4), pair(GateKind::iswap)},

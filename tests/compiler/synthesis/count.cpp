@@ -1,11 +1,10 @@
 // Counts against a naive count of the circuit with every repeat written out.
 #include <doctest/doctest.h>
 
-#include <farrier/circuit.hpp>
-
 #include <algorithm>
 #include <array>
 #include <cmath>
+#include <farrier/circuit.hpp>
 #include <map>
 #include <numbers>
 #include <string>
@@ -82,7 +81,8 @@ void check_equal(const CircuitCounts& a, const CircuitCounts& b) {
 }
 
 Gate random_gate(std::uint32_t qubits, Random& draw) {
-  const auto kind = static_cast<GateKind>(below(draw, static_cast<std::uint32_t>(GateKind::rxx) + 1));
+  const auto kind =
+      static_cast<GateKind>(below(draw, static_cast<std::uint32_t>(GateKind::rxx) + 1));
   Gate gate{kind, below(draw, qubits), 0, {}};
   gate.b = gate.a;
   if (kind == GateKind::canonical || kind >= GateKind::cx)
@@ -106,7 +106,9 @@ Circuit random_circuit(std::uint32_t qubits, Random& draw) {
   return circuit;
 }
 
-Gate one(GateKind kind, std::uint32_t q, double angle = 0.0) { return {kind, q, q, {angle}}; }
+Gate one(GateKind kind, std::uint32_t q, double angle = 0.0) {
+  return {kind, q, q, {angle}};
+}
 Gate two(GateKind kind, std::uint32_t a, std::uint32_t b, double angle = 0.0) {
   return {kind, a, b, {angle}};
 }

@@ -118,7 +118,9 @@ TEST_CASE("no edge takes no colour") {
   CHECK(colour_edges(5, {}).empty());
 }
 
-TEST_CASE("one edge takes one colour") { CHECK(colours(7, {{2, 5}}) == 1); }
+TEST_CASE("one edge takes one colour") {
+  CHECK(colours(7, {{2, 5}}) == 1);
+}
 
 TEST_CASE("chains and even rings take two colours - odd rings three") {
   Random draw(1);

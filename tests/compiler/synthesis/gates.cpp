@@ -1,10 +1,9 @@
 // The table of gates: its rows against the matrices of the gates, and phases that are added up.
 #include <doctest/doctest.h>
 
+#include <cmath>
 #include <farrier/circuit.hpp>
 #include <farrier/diagnostic.hpp>
-
-#include <cmath>
 #include <numbers>
 #include <set>
 #include <sstream>
@@ -48,7 +47,8 @@ std::vector<Gate> gates_of(const std::string& definition, double theta) {
           angle_of(statement.substr(end + 1, statement.find(')') - end - 1), theta);
     std::vector<std::uint32_t> operands;
     for (std::size_t k = statement.find(' ', end); k < statement.size(); ++k)
-      if (statement[k] == 'a' || statement[k] == 'b') operands.push_back(statement[k] == 'a' ? 1 : 0);
+      if (statement[k] == 'a' || statement[k] == 'b')
+        operands.push_back(statement[k] == 'a' ? 1 : 0);
     gate.a = operands.front();
     gate.b = operands.back();
     gates.push_back(gate);
@@ -77,8 +77,8 @@ TEST_CASE("gates that have not been lowered have no row") {
 
 TEST_CASE("what the standard library lacks is defined and nothing else") {
   // OpenQASM 3 specification, "Standard library" and "Built-in gates".
-  const std::set<std::string> given = {"h", "s", "sdg", "sx", "x", "y", "z",
-                                       "rx", "ry", "rz", "U", "cx", "cz"};
+  const std::set<std::string> given = {"h",  "s",  "sdg", "sx", "x",  "y", "z",
+                                       "rx", "ry", "rz",  "U",  "cx", "cz"};
   for (const GateInfo& info : gate_table())
     CHECK(info.definition.empty() == given.contains(std::string(info.name)));
 }
@@ -92,7 +92,8 @@ TEST_CASE("each definition is the gate that it names - global phase included") {
       REQUIRE_FALSE(body.empty());
       // Operand a is the more significant qubit of the gate's matrix.
       const Gate gate{info.kind, 1, 0, {theta}};
-      CHECK(unitary::distance(unitary::gates_matrix(2, body), unitary::gate_matrix(gate)) <= 2e-16L);
+      CHECK(unitary::distance(unitary::gates_matrix(2, body), unitary::gate_matrix(gate)) <=
+            2e-16L);
     }
   }
 }

@@ -73,19 +73,28 @@ Gate random_gate(std::uint32_t qubits, Random& draw) {
   const std::uint32_t b = (a + 1 + below(draw, qubits - 1)) % qubits;
   const std::array<double, 6> angles = {pi / 2, -pi / 2, pi, 0.3, -0.3, 2.5};
   switch (below(draw, 9)) {
-    case 0: return two(GateKind::cx, a, b);
-    case 1: return two(GateKind::cz, a, b);
-    case 2: return two(GateKind::ecr, a, b);
-    case 3: return two(GateKind::iswap, a, b);
-    case 4: return two(GateKind::rzz, a, b, {pick(draw, angles)});
-    case 5: return two(GateKind::rxx, a, b, {pick(draw, angles)});
+    case 0:
+      return two(GateKind::cx, a, b);
+    case 1:
+      return two(GateKind::cz, a, b);
+    case 2:
+      return two(GateKind::ecr, a, b);
+    case 3:
+      return two(GateKind::iswap, a, b);
+    case 4:
+      return two(GateKind::rzz, a, b, {pick(draw, angles)});
+    case 5:
+      return two(GateKind::rxx, a, b, {pick(draw, angles)});
     case 6:
       return two(GateKind::canonical, a, b,
-                 {draw.chance(0.5) ? 0.0 : pick(draw, angles) / 4, draw.chance(0.5) ? 0.0 : pick(draw, angles) / 4,
+                 {draw.chance(0.5) ? 0.0 : pick(draw, angles) / 4,
+                  draw.chance(0.5) ? 0.0 : pick(draw, angles) / 4,
                   draw.chance(0.5) ? 0.0 : pick(draw, angles) / 4});
-    case 7: return turn_gate(a, compose(rotation(pick(draw, letters), draw.between(-6, 6)),
-                                        rotation(pick(draw, letters), draw.between(-6, 6))));
-    default: return turned(a, pick(draw, letters), pick(draw, angles));
+    case 7:
+      return turn_gate(a, compose(rotation(pick(draw, letters), draw.between(-6, 6)),
+                                  rotation(pick(draw, letters), draw.between(-6, 6))));
+    default:
+      return turned(a, pick(draw, letters), pick(draw, angles));
   }
 }
 
@@ -109,7 +118,8 @@ Circuit mirrored(std::uint32_t qubits, Random& draw) {
   std::vector<Gate>& gates = circuit.segments.front().gates;
   for (std::size_t k = gates.size(); k-- > 0;) {
     Gate gate = gates[k];
-    if (gate.kind == GateKind::turn) gate = turn_gate(gate.a, inverse(turn_of(gate)));
+    if (gate.kind == GateKind::turn)
+      gate = turn_gate(gate.a, inverse(turn_of(gate)));
     else if (gate.kind != GateKind::iswap)
       for (double& parameter : gate.parameters) parameter = -parameter;
     gates.push_back(gate);
@@ -135,9 +145,8 @@ TEST_CASE("a second run changes no count for the worse") {
 }
 
 TEST_CASE("a turn and its inverse vanish") {
-  const Circuit after = simplified(circuit_of(2, {{{turned(0, Pauli::y, 0.7), turned(1, Pauli::x, 1),
-                                                    turned(0, Pauli::y, -0.7)},
-                                                   1}}));
+  const Circuit after = simplified(circuit_of(
+      2, {{{turned(0, Pauli::y, 0.7), turned(1, Pauli::x, 1), turned(0, Pauli::y, -0.7)}, 1}}));
   CHECK(gates_in(after) == 1);
   CHECK(after.global_phase == 0.0);
 }
@@ -171,23 +180,23 @@ TEST_CASE("equal gates that are their own inverse vanish in pairs") {
 TEST_CASE("cx and ecr do not vanish with their operands exchanged - iswap not at all") {
   for (const GateKind kind : {GateKind::cx, GateKind::ecr})
     CHECK(gates_in(simplified(circuit_of(2, {{{two(kind, 0, 1), two(kind, 1, 0)}, 1}}))) == 2);
-  CHECK(gates_in(simplified(circuit_of(
-            2, {{{two(GateKind::iswap, 0, 1), two(GateKind::iswap, 0, 1)}, 1}}))) == 2);
+  CHECK(gates_in(simplified(
+            circuit_of(2, {{{two(GateKind::iswap, 0, 1), two(GateKind::iswap, 0, 1)}, 1}}))) == 2);
 }
 
 TEST_CASE("a gate between keeps two equal gates apart") {
-  CHECK(gates_in(simplified(circuit_of(3, {{{two(GateKind::cx, 0, 1), turned(1, Pauli::z, 0.3),
-                                             two(GateKind::cx, 0, 1)},
-                                            1}}))) == 3);
   CHECK(gates_in(simplified(circuit_of(
-            3, {{{two(GateKind::cx, 0, 1), two(GateKind::cx, 1, 2), two(GateKind::cx, 0, 1)}, 1}}))) ==
-        3);
+            3, {{{two(GateKind::cx, 0, 1), turned(1, Pauli::z, 0.3), two(GateKind::cx, 0, 1)},
+                 1}}))) == 3);
+  CHECK(gates_in(simplified(circuit_of(
+            3, {{{two(GateKind::cx, 0, 1), two(GateKind::cx, 1, 2), two(GateKind::cx, 0, 1)},
+                 1}}))) == 3);
 }
 
 TEST_CASE("angles of neighbours on one pair are added up") {
   for (const GateKind kind : {GateKind::canonical, GateKind::rzz, GateKind::rxx}) {
-    const Circuit after = simplified(
-        circuit_of(2, {{{two(kind, 0, 1, {0.25}), two(kind, 1, 0, {0.5})}, 1}}));
+    const Circuit after =
+        simplified(circuit_of(2, {{{two(kind, 0, 1, {0.25}), two(kind, 1, 0, {0.5})}, 1}}));
     REQUIRE(gates_in(after) == 1);
     CHECK(after.segments.front().gates.front().parameters[0] == 0.75);
     CHECK(simplified(circuit_of(2, {{{two(kind, 0, 1, {0.25}), two(kind, 0, 1, {-0.25})}, 1}}))
@@ -200,7 +209,8 @@ TEST_CASE("angles that are added up stay within one turn") {
   for (const GateKind kind : {GateKind::rzz, GateKind::rxx}) {
     for (const double angle : {3.0, -3.0, pi, -2.5}) {
       const Circuit after = simplified(circuit_of(
-          2, {{{two(kind, 0, 1, {angle}), two(kind, 0, 1, {angle}), two(kind, 0, 1, {angle})}, 1}}));
+          2,
+          {{{two(kind, 0, 1, {angle}), two(kind, 0, 1, {angle}), two(kind, 0, 1, {angle})}, 1}}));
       for (const Segment& segment : after.segments) {
         for (const Gate& gate : segment.gates) {
           CHECK(gate.parameters[0] > -pi);
@@ -214,7 +224,8 @@ TEST_CASE("angles that are added up stay within one turn") {
 TEST_CASE("lone turns of a body are lifted out of it") {
   for (const std::uint64_t repeats : {std::uint64_t{2}, std::uint64_t{5}, std::uint64_t{1000}}) {
     const Circuit after = simplified(circuit_of(
-        3, {{{two(GateKind::cx, 0, 1), turned(2, Pauli::y, 0.3), turned(0, Pauli::x, 0.2)}, repeats}}));
+        3, {{{two(GateKind::cx, 0, 1), turned(2, Pauli::y, 0.3), turned(0, Pauli::x, 0.2)},
+             repeats}}));
     std::size_t on_two = 0;
     for (const Segment& segment : after.segments)
       for (const Gate& gate : segment.gates)
@@ -232,10 +243,9 @@ TEST_CASE("a lone turn that comes round vanishes") {
 TEST_CASE("a body whose ends cancel is rotated") {
   // [V cx V^dag] x n is V [cx] x n V^dag, gate for gate.
   const std::uint64_t repeats = 50;
-  const Circuit before =
-      circuit_of(2, {{{turned(0, Pauli::y, 0.4), two(GateKind::cx, 0, 1),
-                       turned(1, Pauli::z, 0.3), turned(0, Pauli::y, -0.4)},
-                      repeats}});
+  const Circuit before = circuit_of(2, {{{turned(0, Pauli::y, 0.4), two(GateKind::cx, 0, 1),
+                                          turned(1, Pauli::z, 0.3), turned(0, Pauli::y, -0.4)},
+                                         repeats}});
   const CircuitCounts after = count(simplified(before));
   CHECK(after.two_qubit_gates == repeats);
   CHECK(after.one_qubit_gates == repeats + 2);
@@ -244,10 +254,10 @@ TEST_CASE("a body whose ends cancel is rotated") {
 TEST_CASE("two-qubit gates meet over the seam") {
   // [cx T cx U] x n with U on another qubit: the last cx of a round meets the first of the next.
   const std::uint64_t repeats = 40;
-  const Circuit before = circuit_of(
-      3, {{{two(GateKind::cx, 0, 1), turned(1, Pauli::z, 0.3), two(GateKind::cx, 0, 1),
-            two(GateKind::cz, 1, 2), two(GateKind::cz, 1, 2)},
-           repeats}});
+  const Circuit before =
+      circuit_of(3, {{{two(GateKind::cx, 0, 1), turned(1, Pauli::z, 0.3), two(GateKind::cx, 0, 1),
+                       two(GateKind::cz, 1, 2), two(GateKind::cz, 1, 2)},
+                      repeats}});
   const CircuitCounts after = count(simplified(before));
   CHECK(after.two_qubit_gates == 2);
 }
@@ -272,7 +282,7 @@ TEST_CASE("empty segments and segments of no repeats are dropped") {
 }
 
 TEST_CASE("neighbouring segments that run once are one") {
-  const Circuit after = simplified(
-      circuit_of(2, {{{two(GateKind::cx, 0, 1)}, 1}, {{two(GateKind::cx, 0, 1)}, 1}}));
+  const Circuit after =
+      simplified(circuit_of(2, {{{two(GateKind::cx, 0, 1)}, 1}, {{two(GateKind::cx, 0, 1)}, 1}}));
   CHECK(after.segments.empty());
 }

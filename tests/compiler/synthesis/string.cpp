@@ -26,7 +26,8 @@ std::uint64_t two_qubit_gates(const Sequence& sequence) {
 std::uint64_t two_qubit_depth(const Sequence& sequence, std::uint32_t qubits) {
   std::vector<std::uint64_t> depth(qubits, 0);
   for (const Gate& gate : sequence.gates)
-    if (gate.two_qubit()) depth[gate.a] = depth[gate.b] = 1 + std::max(depth[gate.a], depth[gate.b]);
+    if (gate.two_qubit())
+      depth[gate.a] = depth[gate.b] = 1 + std::max(depth[gate.a], depth[gate.b]);
   return *std::ranges::max_element(depth);
 }
 
@@ -62,8 +63,8 @@ TEST_CASE("a string of weight w takes 2 w - 2 cx in either ladder") {
   Random draw(2);
   for (std::uint32_t weight = 1; weight <= 33; ++weight)
     for (const Ladder ladder : {Ladder::line, Ladder::tree})
-      CHECK(two_qubit_gates(string_sequence(test::random_string_of_weight(draw, 40, weight), 0.3, ladder)) ==
-            2 * (weight - 1));
+      CHECK(two_qubit_gates(string_sequence(test::random_string_of_weight(draw, 40, weight), 0.3,
+                                            ladder)) == 2 * (weight - 1));
 }
 
 TEST_CASE("a line is 2 w - 2 deep - a tree twice the logarithm of w rounded up") {

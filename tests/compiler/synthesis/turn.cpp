@@ -31,7 +31,9 @@ Matrix letter_matrix(Pauli letter) {
   return unitary::string_matrix(1, std::array{Factor(0, letter)});
 }
 
-Matrix matrix(const Turn& turn) { return unitary::gate_matrix(turn_gate(0, turn)); }
+Matrix matrix(const Turn& turn) {
+  return unitary::gate_matrix(turn_gate(0, turn));
+}
 
 /// The unitary nearest to a turn whose components were rounded.
 Matrix unit_matrix(const Turn& turn) {
@@ -48,7 +50,8 @@ Real naming_distance(const Turn& turn, const NamedTurn& named) {
   return unitary::distance(unitary::gates_matrix(1, named.gates, named.phase), unit_matrix(turn));
 }
 
-/// What naming must keep: the operator within the stated rounding, one gate at most, angles in range.
+/// What naming must keep: the operator within the stated rounding, one gate at most, angles in
+/// range.
 void check_name(const Turn& turn) {
   const NamedTurn named = name_turn(0, turn);
   CHECK(named.gates.size() <= 1);
@@ -220,9 +223,9 @@ TEST_CASE("all products of quarter turns are named within their rounding") {
   for (int code = 0; code < 6 * 6 * 6 * 6; ++code) {
     Turn turn;
     for (int rest = code, k = 0; k < 4; ++k, rest /= 6)
-      turn = compose(rotation(letters[static_cast<std::size_t>(rest % 3)],
-                              rest % 6 < 3 ? pi / 2 : -pi / 2),
-                     turn);
+      turn = compose(
+          rotation(letters[static_cast<std::size_t>(rest % 3)], rest % 6 < 3 ? pi / 2 : -pi / 2),
+          turn);
     check_name(turn);
   }
 }
@@ -234,10 +237,10 @@ TEST_CASE("turns beside those of a shorter name keep the rounding that is stated
       Turn base = rotation(pick(draw, letters), draw.between(-7, 7));
       if (k % 2 == 0) base = pick(draw, turns_with_names()).second;
       if (k % 4 == 1) base = draw.chance(0.5) ? Turn{} : Turn{-1, 0, 0, 0};
-      check_name(compose({base.w + draw.between(-scale, scale), base.x + draw.between(-scale, scale),
-                          base.y + draw.between(-scale, scale),
-                          base.z + draw.between(-scale, scale)},
-                         {}));
+      check_name(
+          compose({base.w + draw.between(-scale, scale), base.x + draw.between(-scale, scale),
+                   base.y + draw.between(-scale, scale), base.z + draw.between(-scale, scale)},
+                  {}));
     }
   }
 }
