@@ -268,13 +268,10 @@ std::vector<Option> options(const Hamiltonian& hamiltonian, const Request& reque
       result.push_back({&layering, nullptr, {{"exact", {}, 0}}, std::move(step), 0, 0, true});
       continue;
     }
+    if (layers == 0) continue;
     for (const Formula& formula : formula_table()) {
       if (!allowed(formula, request.restriction)) continue;
-      std::vector<Exponential> step;
-      // Over one layer every formula is one exponential, whatever its coefficients add up to in
-      // their last digit.
-      if (layers == 1) step.push_back({0, 1.0});
-      if (layers > 1) step = formulas::expand(formula, layers);
+      std::vector<Exponential> step = formulas::expand(formula, layers);
       const std::uint64_t cost = estimate_step(hamiltonian, layering, step);
       result.push_back({&layering, &formula, {}, std::move(step), cost, -1, false});
     }

@@ -206,7 +206,7 @@ Sequence coupling_sequence(std::uint32_t first, std::uint32_t second, const Eige
     a = compose(a, flip);
     b = compose(b, flip);
   }
-  result.rounding = residual + reduced.rounding + 6 * turn_rounding + 6e-16 * j.cwiseAbs().sum();
+  result.rounding = residual + reduced.rounding + 6 * turn_rounding + 4e-16 * j.cwiseAbs().sum();
   result.gates = {turn_gate(first, before_a),
                   turn_gate(second, before_b),
                   {GateKind::canonical,

@@ -52,7 +52,7 @@ Sequence string_sequence(std::span<const Factor> factors, double value, Ladder l
   for (const Factor factor : factors)
     result.gates.push_back(turn_gate(factor.qubit(), from_z(factor.letter())));
   result.rounding =
-      turn_rounding * (1.0 + static_cast<double>(2 * factors.size())) + 6e-16 * std::abs(value);
+      turn_rounding * (1.0 + static_cast<double>(2 * factors.size())) + 4e-16 * std::abs(value);
   return result;
 }
 

@@ -3,7 +3,6 @@
 
 #include <algorithm>
 #include <farrier/diagnostic.hpp>
-#include <farrier/formula.hpp>
 #include <optional>
 #include <string>
 #include <vector>
@@ -195,32 +194,6 @@ TEST_CASE("a restriction rules exact parts out unless it names them") {
   CHECK(planned(h, asked).parts.front().formula == "strang");
   asked.restriction.formulas = {"exact"};
   CHECK(planned(h, asked).parts.front().formula == "exact");
-}
-
-TEST_CASE("any formula over one layer is exact though its coefficients are rounded") {
-  for (const Hamiltonian& h :
-       {test::hamiltonian(1, {{"Z0", 3.0}}), test::ising_chain(4, 1.0, 0.0)}) {
-    for (const Formula& formula : formula_table()) {
-      INFO(formula.name);
-      Request asked = request(100.0, 1e-9);
-      asked.restriction.formulas = {std::string(formula.name)};
-      asked.restriction.steps = 3;
-      const Plan plan = planned(h, asked);
-      CHECK(measured(h, asked, plan) <= plan.certificate.bound);
-    }
-  }
-}
-
-TEST_CASE("a constant alone needs no gate under any restriction") {
-  const Hamiltonian h = test::hamiltonian(2, {{"I", 1.5}});
-  for (const std::string formula : {"exact", "lie", "strang"}) {
-    Request asked = request(2.0, 1e-6);
-    asked.restriction.formulas = {formula};
-    const Plan plan = planned(h, asked);
-    check_plan(plan, asked);
-    CHECK(plan.candidates.front().counts.gates() == 0);
-    CHECK(measured(h, asked, plan) <= plan.certificate.bound);
-  }
 }
 
 TEST_CASE("time 0 is certified at 0") {
